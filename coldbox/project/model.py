@@ -403,7 +403,7 @@ class Trip(Record):
 class Sizing(Record):
     run_hours: Number  # seconds a day
     safety: Number
-    unit_tested_with_body: bool  # ATP: 1.35 instead of 1.75
+    tested_with_unit: bool  # ATP: 1.35 instead of 1.75
 
 
 class Money(Record):
