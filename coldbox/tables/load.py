@@ -1,0 +1,163 @@
+"""Rows of the built-in tables, each checked when it is first asked for.
+
+Parsing a whole table costs ten milliseconds and more, a row less than one: a look-up finds the row's block in the text
+and parses only that. So in these files a line that starts with `[` at its very beginning is always the head of a row.
+"""
+
+from __future__ import annotations
+
+import tomllib
+from collections.abc import Mapping
+from functools import cache
+from pathlib import Path
+from types import MappingProxyType
+from typing import Any
+
+from coldbox.errors import TableFault, UnknownName
+from coldbox.tables import columns
+
+Row = Mapping[str, Any]  # what each column holds is declared in `columns` and checked before anybody sees the row
+
+FOLDER = Path(__file__).parent
+
+
+def row(table: str, name: str, folder: Path = FOLDER) -> Row:
+    """One row of a table, by its name or another name it goes by (`also`).
+
+    table: file name without its ending. name: as written there. Returns the columns, numbers as float, read-only.
+    Raises UnknownName with the nearest name; TableFault where the row breaks its declaration or has no known source.
+    Example: row("materials", "PIR foam")["conductivity"]
+    """
+    return _row(table, name, folder)
+
+
+def rows(table: str, folder: Path = FOLDER) -> Mapping[str, Row]:
+    """Every row of a table by name, in the order of the file. Raises UnknownName and TableFault as `row` does."""
+    return _rows(table, folder)
+
+
+def names(table: str, folder: Path = FOLDER) -> tuple[str, ...]:
+    """The names of a table's rows, in the order of the file; parses nothing. Raises UnknownName."""
+    return tuple(_name(line) for line in _text(table, folder).split("\n") if line.startswith("["))
+
+
+def aliases(table: str, folder: Path = FOLDER) -> Mapping[str, str]:
+    """Other names of a table's rows, each with the name of its row. Raises UnknownName."""
+    return _aliases(table, folder)
+
+
+def figures(table: str, column: str, folder: Path = FOLDER) -> Mapping[str, float]:
+    """One number column of a whole table by row name, read off the text without parsing it or checking the rows.
+
+    For searches over a long table, such as the nearest place. Rows without the column are left out.
+    """
+    found: dict[str, float] = {}
+    head, wanted = "", f"{column} = "
+    for line in _text(table, folder).split("\n"):
+        if line.startswith("["):
+            head = _name(line)
+        elif head and line.startswith(wanted):
+            found[head] = float(line.removeprefix(wanted).partition("#")[0])
+    return found
+
+
+def source(key: str, folder: Path = FOLDER) -> Row:
+    """Title, place and how it was read of a source. Raises UnknownName."""
+    return _row("sources", key, folder)
+
+
+def sources(folder: Path = FOLDER) -> Mapping[str, Row]:
+    """Every source by its key."""
+    return _rows("sources", folder)
+
+
+def tables() -> tuple[str, ...]:
+    """The names of the built-in tables."""
+    return tuple(columns.COLUMNS)
+
+
+@cache
+def _text(table: str, folder: Path) -> str:
+    if table != "sources" and table not in columns.COLUMNS:
+        raise UnknownName("tables", table, _nearest(table, tables()))
+    try:
+        return (folder / f"{table}.toml").read_text(encoding="utf-8")
+    except OSError as trouble:
+        raise TableFault(table, "all", f"cannot be read: {trouble.strerror}") from trouble
+
+
+@cache
+def _row(table: str, name: str, folder: Path) -> Row:
+    block = _block(table, name, folder)
+    if block is None:
+        other = _aliases(table, folder).get(name)
+        if other is not None:
+            return _row(table, other, folder)
+        known = (*names(table, folder), *_aliases(table, folder))
+        raise UnknownName(table, name, _nearest(name, known))
+    try:
+        return _checked(table, name, tomllib.loads(block)[name], folder)
+    except tomllib.TOMLDecodeError as trouble:
+        raise TableFault(table, name, f"cannot be read: {trouble}") from trouble
+
+
+@cache
+def _rows(table: str, folder: Path) -> Mapping[str, Row]:
+    try:
+        content = tomllib.loads(_text(table, folder))
+    except tomllib.TOMLDecodeError as trouble:
+        raise TableFault(table, "all", f"cannot be read: {trouble}") from trouble
+    return MappingProxyType({name: _checked(table, name, values, folder) for name, values in content.items()})
+
+
+@cache
+def _aliases(table: str, folder: Path) -> Mapping[str, str]:
+    found: dict[str, str] = {}
+    head = ""
+    for line in _text(table, folder).split("\n"):
+        if line.startswith("["):
+            head = _name(line)
+        elif line.startswith("also = "):
+            found.update(dict.fromkeys(tomllib.loads(line)["also"], head))
+    return MappingProxyType(found)
+
+
+def _block(table: str, name: str, folder: Path) -> str | None:
+    """The text of one row with its head, or None."""
+    text = "\n" + _text(table, folder)
+    heads = (f'\n["{name}"]\n', f"\n[{name}]\n")
+    start = next((at for at in map(text.find, heads) if at >= 0), None) if "\n" not in name else None
+    if start is None:
+        return None
+    end = text.find("\n[", start + 1)
+    return text[start:] if end < 0 else text[start:end]
+
+
+def _name(head: str) -> str:
+    return head.strip().removeprefix("[").removesuffix("]").strip('"')
+
+
+def _checked(table: str, name: str, values: object, folder: Path) -> Row:
+    """The row as callers get it, if it keeps to the declaration of its table."""
+    if not isinstance(values, dict):
+        raise TableFault(table, name, "is no row")
+    declared = columns.SOURCES if table == "sources" else {**columns.COMMON, **columns.COLUMNS[table]}
+    also = values.pop("also", None)
+    fault = columns.row_fault(declared, values) or (columns.also_fault(also) if also is not None else "")
+    if fault:
+        raise TableFault(table, name, fault)
+    if table != "sources" and _block("sources", values["source"], folder) is None:
+        raise TableFault(table, name, f'source "{values["source"]}" is not in sources.toml')
+    row = columns.cleaned(declared, values)
+    return MappingProxyType(row if also is None else {**row, "also": tuple(also)})
+
+
+def _nearest(name: str, known: tuple[str, ...]) -> str | None:
+    import difflib  # only a look-up that failed pays for it
+
+    by_small = {one.casefold(): one for one in known}
+    close = difflib.get_close_matches(name.casefold(), by_small, n=1, cutoff=0.5)
+    if close:
+        return by_small[close[0]]
+    within = [one for one in known if name.casefold() in one.casefold() or one.casefold() in name.casefold()]
+    return within[0] if within else None
