@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from coldbox.project.fields import answer, box, course, goods, inside, openings, place
 from coldbox.project.fields.declare import Field, Table
 
-__all__ = ["BY_KEY", "FIELDS", "TABLES", "TOP_TABLES", "Field", "Table", "field"]
+__all__ = ["BY_KEY", "FIELDS", "TABLES", "TOP_TABLES", "Field", "Table", "declared_in", "example", "field"]
 
 _ORDER = (
     "", "site", "box", "box.limits", "constructions", "constructions.layers", "neighbours", "faces", "panels", "doors",
@@ -51,3 +51,17 @@ def field(path: str) -> Field:
     """
     table, _, key = path.rpartition(".")
     return BY_KEY[table][key]
+
+
+def declared_in(key: str) -> str:
+    """The tables that have a key of this name, as a file writes them ("[sizing]"); "" for none, or for many."""
+    headers = {"one": "[{}]", "named": "[{}.NAME]", "list": "[[{}]]"}
+    found = [headers[TABLES[name].form].format(name) for name in TOP_TABLES if key in BY_KEY[name]]
+    return " or ".join(found) if len(found) < 4 else ""
+
+
+def example(declared: Field) -> str:
+    """The key with a value that will do, as a line of the file: `width = "900 mm"`."""
+    from coldbox.project.fields import examples
+
+    return examples.example(declared)

@@ -54,7 +54,7 @@ FIELDS = (
     notes(_SURE),
     Field(_FIT, "on", "yes_no", "on", "Whether the factors below are applied.", default="true",
           default_reason="a fit is there to be used", source=TRADE),
-    Field(_FIT, "file", "text", "file", "The logger record it was made from.", required=True),
+    Field(_FIT, "file", "name", "file", "The logger record it was made from.", required=True),
     Field(_FIT, "date", "text", "date", "When it was made.", default_reason=_NO_FIT),
     Field(_FIT, "hash", "text", "hash", "What the record's content was then.", default_reason=_NO_FIT),
     *(

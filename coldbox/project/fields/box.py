@@ -93,8 +93,8 @@ _BOX_FIELDS = (
           default_reason="from the sizes"),
     Field(_BOX, "perimeter", "length", "perimeter", "Outline of the floor; only for shapes that are no box and no L.",
           0.04, 5000.0, default_reason="from the sizes"),
-    Field(_BOX, "bearing", "angle", "bearing", 'Which way the front faces, degrees clockwise from north or "SSW".', 0.0,
-          360.0, default_reason="the worst of 16 where the sun counts"),
+    Field(_BOX, "bearing", "bearing", "bearing", 'Which way the front faces, degrees clockwise from north or "SSW".',
+          0.0, 360.0, default_reason="the worst of 16 where the sun counts"),
     Field(_BOX, "temperature", "temperature", "room temperature", "Held inside; of a box without power, the wanted "
           "one.", -100.0, 60.0, True),
     Field(_BOX, "humidity", "share", "room humidity", "Relative humidity inside.", 0.01, 1.0,

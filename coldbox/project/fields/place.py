@@ -34,10 +34,10 @@ FIELDS = (
     Field(_SITE, "place", "text", "place", "A place of the weather table; it fills in the keys below that you leave "
           "out.", default_reason="none", refers="weather"),
     library(_SITE, "The place"),
-    Field(_SITE, "latitude", "angle", "latitude", 'Degrees north of the equator, such as "55.1° N". Needed without a '
-          "place.", -90.0, 90.0, default_reason="the place's"),
-    Field(_SITE, "longitude", "angle", "longitude", 'Degrees east of Greenwich, such as "14.7° E". Needed without a '
-          "place.", -180.0, 180.0, default_reason="the place's"),
+    Field(_SITE, "latitude", "latitude", "latitude", 'Degrees north of the equator, such as "55.1° N". Needed '
+          "without a place.", -90.0, 90.0, default_reason="the place's"),
+    Field(_SITE, "longitude", "longitude", "longitude", 'Degrees east of Greenwich, such as "14.7° E". Needed '
+          "without a place.", -180.0, 180.0, default_reason="the place's"),
     Field(_SITE, "altitude", "length", "altitude", "Height above the sea; it sets the air pressure.", -430.0, 6000.0,
           default="0 m", default_reason="the place's, or sea level", source=TRADE),
     Field(_SITE, "clock", "utc_offset", "clock", "What the wall clock shows on the design day against UTC, summer time "
@@ -47,7 +47,7 @@ FIELDS = (
           default_reason="the hottest month of the place, or July north and January south of the equator"),
     Field(_SITE, "day", "count", "day", "Day of the month of the design day.", 1, 31,
           default="21", default_reason="the day of the month the sun tables are made for", source=_CLEAR_SKY),
-    Field(_SITE, "weather", "text", "weather file", "A CSV file of hourly weather in the same folder.",
+    Field(_SITE, "weather", "name", "weather file", "A CSV file of hourly weather in the same folder.",
           default_reason="none: the design day is computed"),
     Field(_SITE, "dry_bulb", "temperature", "outdoor temperature", "The day's highest, reached at 15:00 by the sun. "
           "Needed without a place.", -60.0, 60.0, default_reason="the place's design temperature"),
