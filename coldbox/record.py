@@ -16,6 +16,7 @@ class Record:
 
     _names: ClassVar[tuple[str, ...]] = ()
     _defaults: ClassVar[dict[str, Any]] = {}
+    _known: ClassVar[frozenset[str]] = frozenset()
 
     def __init_subclass__(cls) -> None:
         own = [name for name in cls.__dict__.get("__annotations__", {}) if not name.startswith("_")]
@@ -24,10 +25,11 @@ class Record:
             **cls._defaults,
             **{name: cls.__dict__[name] for name in own if name in cls.__dict__},
         }
+        cls._known = frozenset(cls._names)
 
     def __init__(self, **values: Any) -> None:
         mine = {**self._defaults, **values}
-        if len(mine) != len(self._names) or any(name not in mine for name in self._names):
+        if mine.keys() != self._known:
             missing = [name for name in self._names if name not in mine]
             unknown = [name for name in mine if name not in self._names]
             raise TypeError(f"{type(self).__name__}: missing {missing}, unknown {unknown}")
@@ -46,7 +48,7 @@ class Record:
         return type(self) is type(other) and self.__dict__ == other.__dict__
 
     def __hash__(self) -> int:
-        return hash(tuple(self.__dict__.values()))
+        return hash(tuple([self.__dict__[name] for name in self._names]))
 
     def __repr__(self) -> str:
         return f"{type(self).__name__}({', '.join(f'{name}={value!r}' for name, value in self)})"
