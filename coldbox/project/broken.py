@@ -51,11 +51,11 @@ def load(text: str, file: str) -> tuple[dict[str, object], str, list[Problem]]:
         if mended is not None:
             try:
                 return tomllib.loads(mended), mended, problems
-            except (tomllib.TOMLDecodeError, RecursionError, ValueError):
-                pass  # the first error is told in any case
-        told = _told(text, file, error)
-        if all(problem.line != told.line for problem in problems):
-            problems.append(told)
+            except tomllib.TOMLDecodeError as another:
+                error = another
+            except (RecursionError, ValueError):
+                pass  # the first error is told
+        problems.append(_told(text, file, error))
     except RecursionError:
         problems.append(_problem(file, text, _deep_line(text), "Brackets stand in brackets far too deep. Write lists of"
                                  " plain values, or of tables, as the examples do."))  # fmt: skip
@@ -77,12 +77,12 @@ def _quoted(text: str, file: str, problems: list[Problem]) -> str | None:
         name = next((part for part in reversed(key) if isinstance(part, str)), "")
         found = clean(bare)
         if bare.lower() in ("true", "false"):
-            advice = f"Write it small: {clean(name)} = {bare.lower()}."
+            said = f"is written small: {clean(name)} = {bare.lower()}."
             new = bare.lower()
         else:
-            advice = f'Put it in quotes: {clean(name)} = "{found}".'
+            said = f'stands without quotes. Put it in quotes: {clean(name)} = "{found}".'
             new = '"' + bare.replace("\\", "\\\\").replace('"', '\\"') + '"'
-        problems.append(Problem(f"{found} stands without quotes. {advice}", file=file, line=places.line(key),
+        problems.append(Problem(f"{found} {said}", file=file, line=places.line(key),
                                 path=display(key)))  # fmt: skip
         pieces += [text[done : spot.start], new]
         done = spot.end
@@ -117,7 +117,7 @@ def _told(text: str, file: str, error: tomllib.TOMLDecodeError) -> Problem:
 
 def _problem(file: str, text: str, line: int, sentence: str) -> Problem:
     places = LineMap(text)
-    here = [key for key, spot in places.spots.items() if text.count("\n", 0, spot.key) + 1 == line]
+    here = [key for key, spot in places.spots.items() if places.line_at(spot.key) == line]
     return Problem(sentence, file=file, line=line, path=display(here[0]) if here else "")
 
 

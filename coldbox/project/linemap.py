@@ -6,6 +6,7 @@ paths as in the parsed document: ("doors", 1, "width"), ("outage", "events", 0, 
 
 from __future__ import annotations
 
+from bisect import bisect_right
 from typing import NamedTuple
 
 Key = tuple[str | int, ...]
@@ -33,11 +34,12 @@ class LineMap:
     valid   any text; of a broken one, what stands before the break
     """
 
-    __slots__ = ("_spots", "text")
+    __slots__ = ("_spots", "_starts", "text")
 
     def __init__(self, text: str) -> None:
         self.text = text
         self._spots: dict[Key, Spot] | None = None
+        self._starts: list[int] = []
 
     @property
     def spots(self) -> dict[Key, Spot]:
@@ -51,7 +53,16 @@ class LineMap:
     def line(self, key: Key) -> int | None:
         """The line, from 1, where the key stands; of a key that is not there, of the nearest table around it."""
         spot = self._around(key)
-        return None if spot is None else self.text.count("\n", 0, spot.key) + 1
+        return None if spot is None else self.line_at(spot.key)
+
+    def line_at(self, offset: int) -> int:
+        """The line, from 1, that an offset into the text lies in."""
+        if not self._starts:
+            start = 0
+            for row in self.text.split("\n"):
+                self._starts.append(start)
+                start += len(row) + 1
+        return bisect_right(self._starts, offset)
 
     def source(self, key: Key) -> str | None:
         """The value as it is typed, quotes and all; None for a key that is not there."""
@@ -149,13 +160,18 @@ class _Scan:
 
     def pair(self, base: Key) -> None:
         """`a.b = value`."""
-        begin = self.pos
-        parts = self.key()
-        if not self.text.startswith("=", self.pos):
-            raise _Broken
-        self.pos += 1
-        path = base
-        dotted = [path := (*path, part) for part in parts]
+        begin, text = self.pos, self.text
+        equals = text.find("=", begin)
+        word = text[begin:equals].rstrip(_BLANK)
+        if word.isidentifier() and word.isascii():  # nearly every key; the others take the long way
+            dotted = [(*base, word)]
+        else:
+            path = base
+            dotted = [path := (*path, part) for part in self.key()]
+            equals = self.pos
+            if not text.startswith("=", equals):
+                raise _Broken
+        self.pos = equals + 1
         self.blank()
         start = self.pos
         self.value(dotted[-1])
@@ -240,11 +256,15 @@ class _Scan:
 
     def string(self) -> None:
         """Past a string of any of the four forms."""
-        text = self.text
-        quote = text[self.pos]
-        many = text.startswith(quote * 3, self.pos)
+        text, pos = self.text, self.pos
+        quote = text[pos]
+        found = text.find(quote, pos + 1)
+        if found > pos + 1 and text.find("\\", pos, found) < 0:  # nearly every string
+            self.pos = found + 1
+            return
+        many = text.startswith(quote * 3, pos)
         closing = quote * 3 if many else quote
-        pos = self.pos + len(closing)
+        pos += len(closing)
         while True:
             found = text.find(closing, pos)
             if found < 0:

@@ -26,8 +26,9 @@ def what(value: Any) -> str:
 
 def no_table(value: Any, table: Table, path: str, key: str = "") -> str:
     """About a value where a table is due: an item of a list, or (with `key`) what stands under a name."""
-    hint = f" (the keys of one stand under its name: [{table.name}.NAME])" if key in BY_KEY[table.name] else ""
-    head = f"{what(value)} stands where a table is due{hint}."
+    head = f"{what(value)} stands where a table is due."
+    if key in BY_KEY[table.name]:
+        return f"{head} The keys of one stand under its name: write [{table.name}.NAME], then {key} below it."
     if table.form == "named":
         return f"{head} Write [{path}] and its keys below it."
     if "." in path or "[" in path:

@@ -11,6 +11,7 @@ from coldbox.project.words import clean, fault_of_name, nearest
 
 OPTION = "--set"
 LONGEST_PATH = 300
+_Made = list[tuple[dict[str, Any], str]]  # tables that were not there: parent and key
 
 
 class Option(str):
@@ -45,9 +46,12 @@ def put(document: dict[str, Any], options: Mapping[str, str]) -> list[Problem]:
     """
     problems = []
     for path, text in options.items():
+        made: _Made = []
         try:
-            _put(document, path.strip(), text)
+            _put(document, path.strip(), text, made)
         except _Nowhere as nowhere:
+            for parent, key in reversed(made):
+                del parent[key]
             problems.append(Problem(nowhere.sentence, file=OPTION, path=clean(path, LONGEST_PATH)))
     return problems
 
@@ -58,12 +62,12 @@ class _Nowhere(Exception):
         super().__init__(sentence)
 
 
-def _put(document: dict[str, Any], path: str, text: str) -> None:
+def _put(document: dict[str, Any], path: str, text: str, made: _Made) -> None:
     head, rest = _head(path)
     node: Any = document
     table = ""
     if head in TOP_TABLES:
-        node, rest, at = _enter(document, head, TABLES[head], rest, head)
+        node, rest, at = _enter(document, head, TABLES[head], rest, head, made)
         table = head
     else:
         at, rest = "", path
@@ -84,7 +88,7 @@ def _put(document: dict[str, Any], path: str, text: str) -> None:
         form = TABLES[inner]
         if inner == "constructions":
             form = form._replace(form="one")
-        node, rest, at = _enter(node, key, form, rest, f"{at}.{key}")
+        node, rest, at = _enter(node, key, form, rest, f"{at}.{key}", made)
         table = inner
 
 
@@ -97,17 +101,17 @@ def _head(path: str) -> tuple[str, str]:
     return path[:end], path[end + 1 :] if path[end] == "." else path[end:]
 
 
-def _enter(parent: Any, key: str, table: Table, rest: str, at: str) -> tuple[Any, str, str]:
+def _enter(parent: Any, key: str, table: Table, rest: str, at: str, made: _Made) -> tuple[Any, str, str]:
     """Into a table: the node to put into (None where the file is wrong there), what is left of the path, the way."""
     if not rest:
         raise _Nowhere(f"{clean(at)} is a table. Name one of its keys, such as {_such_as(table, at)}.")
     if table.form == "one":
-        return _node(parent, key, dict), rest.removeprefix("."), at
+        return _node(parent, key, made), rest.removeprefix("."), at
     if table.form == "named":
-        tables = _node(parent, key, dict)
+        tables = _node(parent, key, made)
         names = [*(tables or ()), *table.names]
         name, rest = _name(names, rest, at, table)
-        return _node(tables, name, dict), rest, f"{at}.{name}"
+        return _node(tables, name, made), rest, f"{at}.{name}"
     items = parent.get(key) if isinstance(parent, dict) else None
     items = items if isinstance(items, list) else []
     names = named(table, items)
@@ -134,11 +138,14 @@ def _such_as(table: Table, at: str) -> str:
     return f"{clean(at)}{middle}.{key}"
 
 
-def _node(parent: Any, key: str, form: type[dict[str, Any]]) -> Any:
+def _node(parent: Any, key: str, made: _Made) -> Any:
     """What stands under the key, made where nothing does; None where the file has something else there."""
     if not isinstance(parent, dict):
         return None
-    node = parent.setdefault(key, form())
+    if key not in parent:
+        parent[key] = {}
+        made.append((parent, key))
+    node = parent[key]
     return node if isinstance(node, dict) else None
 
 

@@ -6,7 +6,7 @@ import math
 from typing import Any, Literal, NamedTuple
 
 from coldbox.errors import ColdboxError, UnitProblem
-from coldbox.project.fields import Field
+from coldbox.project.fields import Field, example
 from coldbox.project.words import clean, fault_of, listed, nearest
 from coldbox.units import KINDS, parse, show, what_to_write
 from coldbox.units.clock import Rate, Spread
@@ -86,14 +86,11 @@ def advice(field: Field) -> str:
         return f'Write a name in quotes: {field.key} = "…".'
     if field.kind == "text" or kind is None:
         return f'Write text in quotes: {field.key} = "…".'
-    examples = [f'"{example}"' for example in kind.examples]
-    if field.many == "three":
-        return f"Write three of them in a list, such as [{examples[0]}, {examples[0]}, {examples[0]}]."
     if field.many:
-        return f"Write a list, such as [{', '.join(examples)}]."
+        return f"Write {'three' if field.many == 'three' else 'them'} in a list: {example(field)}."
     if field.other_kind:
         other = KINDS[field.other_kind]
-        return f'Write {kind.label} or {other.label}, such as {examples[0]} or "{other.examples[0]}".'
+        return f'Write {kind.label} or {other.label}, such as "{kind.examples[0]}" or "{other.examples[0]}".'
     return what_to_write(kind)
 
 
