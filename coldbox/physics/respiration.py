@@ -10,7 +10,7 @@ import numpy as np
 from coldbox.errors import OutOfValidity
 from coldbox.physics.number import FloatArray, Number
 
-BEYOND_K: Final = 10.0  # how far the line through the outermost two points is followed
+BEYOND_K: Final = 15.0  # how far the line through the outermost two points is followed
 J_PER_MG: Final = 10.7  # heat per mg of carbon dioxide given off
 BECKER_FRICKE_LOW_C: Final = 0.0
 BECKER_FRICKE_HIGH_C: Final = 30.0
@@ -20,11 +20,11 @@ def heat(at_c: Sequence[Number] | FloatArray, w_per_kg: Sequence[Number] | Float
     """Heat of respiration between measured points, W/kg.
 
     ln w is a straight line in temperature between neighbouring points (so w grows by one factor per kelvin), and the
-    outermost two lines are followed 10 K beyond the points.
+    outermost two lines are followed 15 K beyond the points.
 
     at_c: two temperatures or more, rising, °C. w_per_kg: the heat at each, above 0, W/kg. Each is one number or an
     array that broadcasts with temperature_c, °C. Result: their common shape.
-    Valid from 10 K below the first to 10 K above the last point; raises OutOfValidity beyond, for points that do not
+    Valid from 15 K below the first to 15 K above the last point; raises OutOfValidity beyond, for points that do not
     rise, and for a heat not above 0.
     Source: exponential growth with temperature, the usual form between rates tabled in USDA Agriculture Handbook 66.
 

@@ -160,7 +160,7 @@ class Goods(Record):
     def respiration_w_per_kg(self, temperature_c: Number) -> Number:
         """Heat of respiration, W/kg, at a temperature in °C; 0 for what does not live, and for what is frozen.
 
-        Raises OutOfValidity more than 10 K beyond the points.
+        Raises OutOfValidity more than 15 K beyond the points.
         """
         if not self.lives:
             return np.zeros_like(temperature_c) if np.ndim(temperature_c) else 0.0
