@@ -46,7 +46,7 @@ def load(text: str, file: str) -> tuple[dict[str, object], str, list[Problem]]:
     problems: list[Problem] = []
     try:
         return tomllib.loads(text), text, problems
-    except tomllib.TOMLDecodeError as error:
+    except tomllib.TOMLDecodeError:
         mended = _quoted(text, file, problems)
         if mended is not None:
             try:
@@ -70,9 +70,9 @@ def _quoted(text: str, file: str, problems: list[Problem]) -> str | None:
     places = LineMap(text)
     pieces = []
     done = 0
-    for key, spot in sorted(places.spots.items(), key=lambda item: item[1].start):
-        bare = text[spot.start : spot.end]
-        if bare[:1] in ("", "[", "{", '"', "'") or spot.start < done or _reads(bare):
+    for key, (_, start, end) in sorted(places.spots.items(), key=lambda item: item[1][1]):
+        bare = text[start:end]
+        if bare[:1] in ("", "[", "{", '"', "'") or start < done or _reads(bare):
             continue
         name = next((part for part in reversed(key) if isinstance(part, str)), "")
         found = clean(bare)
@@ -84,8 +84,8 @@ def _quoted(text: str, file: str, problems: list[Problem]) -> str | None:
             new = '"' + bare.replace("\\", "\\\\").replace('"', '\\"') + '"'
         problems.append(Problem(f"{found} {said}", file=file, line=places.line(key),
                                 path=display(key)))  # fmt: skip
-        pieces += [text[done : spot.start], new]
-        done = spot.end
+        pieces += [text[done:start], new]
+        done = end
     return "".join((*pieces, text[done:])) if pieces else None
 
 
@@ -117,7 +117,7 @@ def _told(text: str, file: str, error: tomllib.TOMLDecodeError) -> Problem:
 
 def _problem(file: str, text: str, line: int, sentence: str) -> Problem:
     places = LineMap(text)
-    here = [key for key, spot in places.spots.items() if places.line_at(spot.key) == line]
+    here = [key for key, spot in places.spots.items() if places.line_at(spot[0]) == line]
     return Problem(sentence, file=file, line=line, path=display(here[0]) if here else "")
 
 

@@ -12,7 +12,7 @@ from coldbox.project.fields import BY_KEY, TABLES, TOP_TABLES, Field, Table, exa
 from coldbox.project.linemap import Key, LineMap
 from coldbox.project.raw import Block, Entered, Raw
 from coldbox.project.setting import OPTION, Option, named, put
-from coldbox.project.values import Found, System, Wrong, from_text, from_toml
+from coldbox.project.values import System, Wrong, from_text, from_toml
 from coldbox.project.words import clean, fault_of_name
 
 MOST_PROBLEMS = 300  # told; more would not be read
@@ -104,8 +104,8 @@ class _Walk:
             fault = fault_of_name(name)
             if fault is not None:
                 self.problem(f'"{clean(name)}" {fault}', here, there)
-            elif table.names and name not in table.names:
-                self.problem(sentences.unknown_name(name, table.names, path), here, there)
+            elif table.only and name not in table.only:
+                self.problem(sentences.unknown_name(name, table.only, path), here, there)
             elif not isinstance(inside, dict):
                 self.problem(sentences.no_table(inside, table, here, name), here, there)
             else:
@@ -167,11 +167,10 @@ class _Walk:
         if isinstance(value, Option):
             return self.option(field, value)
         try:
-            found = from_toml(field, value, self.typed(value, key), self.system)
+            return from_toml(field, value, self.typed(value, key), self.lines.line(key), self.system)
         except Wrong as wrong:
             self.problem(str(wrong), path, key)
             return None
-        return _entered(found, sentences.plain(value), self.lines.line(key), option=False)
 
     def typed(self, value: Any, key: Key) -> str:
         """A value as it stands in the file; only numbers, dates and yes/no are asked for."""
@@ -186,13 +185,8 @@ class _Walk:
             sentence = f"{field.key} holds tables. Set one value in it, such as {option.path}{inside}."
         else:
             try:
-                return _entered(from_text(field, option, self.system), str(option), None, option=True)
+                return from_text(field, str(option), self.system, option=True)
             except Wrong as wrong:
                 sentence = str(wrong)
         self.problems.append(Problem(sentence, file=OPTION, path=clean(option.path)))
         return None
-
-
-def _entered(found: Found, text: str, line: int | None, *, option: bool) -> Entered:
-    return Entered(value=found.value, text=text, line=line, spread=found.spread, option=option,
-                   currency=found.currency, kind=found.kind)  # fmt: skip

@@ -7,24 +7,15 @@ paths as in the parsed document: ("doors", 1, "width"), ("outage", "events", 0, 
 from __future__ import annotations
 
 from bisect import bisect_right
-from typing import NamedTuple
 
 Key = tuple[str | int, ...]
+Spot = tuple[int, int, int]
+"""Offsets into the text: of the key (of a list item: of the item), of its value, and of the value's end. Of a table the
+value is its header."""
 
 _BLANK = " \t\r"
 _ESCAPES = {"b": "\b", "t": "\t", "n": "\n", "f": "\f", "r": "\r", "e": "\x1b", '"': '"', "\\": "\\"}
 _HEX = {"x": 2, "u": 4, "U": 8}
-
-
-class Spot(NamedTuple):
-    """Offsets into the text: of the key (of a list item: of the item), and of its value from `start` to `end`.
-
-    Of a table, the value is its header.
-    """
-
-    key: int
-    start: int
-    end: int
 
 
 class LineMap:
@@ -53,7 +44,7 @@ class LineMap:
     def line(self, key: Key) -> int | None:
         """The line, from 1, where the key stands; of a key that is not there, of the nearest table around it."""
         spot = self._around(key)
-        return None if spot is None else self.line_at(spot.key)
+        return None if spot is None else self.line_at(spot[0])
 
     def line_at(self, offset: int) -> int:
         """The line, from 1, that an offset into the text lies in."""
@@ -67,7 +58,7 @@ class LineMap:
     def source(self, key: Key) -> str | None:
         """The value as it is typed, quotes and all; None for a key that is not there."""
         spot = self.spots.get(key)
-        return None if spot is None else self.text[spot.start : spot.end]
+        return None if spot is None else self.text[spot[1] : spot[2]]
 
     def _around(self, key: Key) -> Spot | None:
         while key:
@@ -142,7 +133,7 @@ class _Scan:
         if not self.text.startswith("]" * brackets, self.pos):
             raise _Broken
         self.pos += brackets
-        spot = Spot(begin, begin, self.pos)
+        spot = (begin, begin, self.pos)
         path: Key = ()
         for part in parts[:-1]:
             path = (*path, part)
@@ -175,7 +166,7 @@ class _Scan:
         self.blank()
         start = self.pos
         self.value(dotted[-1])
-        spot = Spot(begin, start, self.pos)
+        spot = (begin, start, self.pos)
         for around in dotted[:-1]:
             self.spots.setdefault(around, spot)
         self.spots[dotted[-1]] = spot
@@ -218,7 +209,7 @@ class _Scan:
             while text[self.pos : self.pos + 1] != "]":
                 start = self.pos
                 self.value((*path, index))
-                self.spots[(*path, index)] = Spot(start, start, self.pos)
+                self.spots[(*path, index)] = (start, start, self.pos)
                 index += 1
                 self.comma("]")
             self.pos += 1

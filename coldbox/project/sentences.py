@@ -5,14 +5,8 @@ from __future__ import annotations
 from typing import Any
 
 from coldbox.project.fields import BY_KEY, TABLES, TOP_TABLES, Table, declared_in, example
+from coldbox.project.values import plain
 from coldbox.project.words import clean, nearest
-
-
-def plain(value: Any) -> str:
-    """A value as somebody would have typed it, quotes apart."""
-    if isinstance(value, list):
-        return ", ".join(str(item) for item in value)
-    return str(value).lower() if isinstance(value, bool) else str(value)
 
 
 def what(value: Any) -> str:

@@ -87,7 +87,7 @@ def _put(document: dict[str, Any], path: str, text: str, made: _Made) -> None:
             return
         form = TABLES[inner]
         if inner == "constructions":
-            form = form._replace(form="one")
+            form = form.replace(form="one")
         node, rest, at = _enter(node, key, form, rest, f"{at}.{key}", made)
         table = inner
 
@@ -109,7 +109,7 @@ def _enter(parent: Any, key: str, table: Table, rest: str, at: str, made: _Made)
         return _node(parent, key, made), rest.removeprefix("."), at
     if table.form == "named":
         tables = _node(parent, key, made)
-        names = [*(tables or ()), *table.names]
+        names = [*(tables or ()), *table.only]
         name, rest = _name(names, rest, at, table)
         return _node(tables, name, made), rest, f"{at}.{name}"
     items = parent.get(key) if isinstance(parent, dict) else None
@@ -156,7 +156,7 @@ def _name(names: list[str], rest: str, at: str, table: Table) -> tuple[str, str]
         name = max(found, key=len)
         return name, rest[len(name) :].removeprefix(".")
     name, _, left = rest.partition(".")
-    if table.form == "named" and not table.names and fault_of_name(name) is None and left:
+    if table.form == "named" and not table.only and fault_of_name(name) is None and left:
         return name, left
     near = nearest(name, names)
     has = f' Nearest: "{clean(at)}.{near}".' if near else f" There are: {', '.join(names)}." if names else ""

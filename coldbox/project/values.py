@@ -3,16 +3,18 @@
 from __future__ import annotations
 
 import math
-from typing import Any, Literal, NamedTuple
+from typing import Any, Literal
 
 from coldbox.errors import ColdboxError, UnitProblem
 from coldbox.project.fields import Field, example
+from coldbox.project.raw import Entered
 from coldbox.project.words import clean, fault_of, listed, nearest
 from coldbox.units import KINDS, parse, show, what_to_write
 from coldbox.units.clock import Rate, Spread
 
 System = Literal["SI", "IP"]
 MOST_VALUES = 100
+_Found = tuple[object, str, Spread | None, str | None]  # value, the kind it was read as, spread, currency
 _YES_NO = {"true": True, "false": False, "yes": True, "no": False}
 
 
@@ -20,45 +22,48 @@ class Wrong(ColdboxError):
     """A value that will not do: the sentence says what was found and what would do."""
 
 
-class Found(NamedTuple):
-    """A value as it will be kept: `kind` is the one of the field's kinds it was read as."""
-
-    value: object
-    kind: str
-    spread: Spread | None = None
-    currency: str | None = None
-
-
-def from_text(field: Field, text: str, system: System = "SI") -> Found:
+def from_text(field: Field, text: str, system: System = "SI", *, option: bool = False) -> Entered:
     """The value of a field from text, as `--set` and the screens take it; words, counts and yes/no too.
 
     field   its declaration
     text    as somebody typed it; several values with ", " or ";" between them
     system  the units that bounds are told in
+    option  whether it was typed with `--set`
+    result  the value in SI, with no line
     raises  Wrong
     """
-    if not field.many:
-        return _one(field, text, system)
-    return _several(field, split(text), system)
+    return _entered(_read(field, text, system), text, None, option=option)
 
 
-def from_toml(field: Field, value: object, source: str, system: System = "SI") -> Found:
-    """The value of a field from what TOML made of it; `source` is how it stands in the file. Raises Wrong."""
+def from_toml(field: Field, value: object, source: str, line: int | None, system: System = "SI") -> Entered:
+    """The value of a field from what TOML made of it.
+
+    field   its declaration
+    value   as tomllib gives it
+    source  how it stands in the file; only of a value that is no text
+    line    where it stands
+    system  the units that bounds are told in
+    result  the value in SI
+    raises  Wrong
+    """
+    if isinstance(value, str):
+        if field.kind in ("count", "yes_no"):
+            raise Wrong(f'"{clean(value)}" is text. {advice(field)}')
+        return _entered(_read(field, value, system), value, line)
     if isinstance(value, list) and field.many:
         for item in value[:MOST_VALUES]:
             if not isinstance(item, str):
-                raise Wrong(f"{_shown(item, clean(_plain(item)))} stands in a list of texts. {advice(field)}")
-        return _several(field, value, system)
-    if isinstance(value, str):
-        if field.many:
-            return _several(field, split(value), system)
-        if field.kind in ("count", "yes_no"):
-            raise Wrong(f'"{clean(value)}" is text. {advice(field)}')
-        return _one(field, value, system)
+                raise Wrong(f"{_shown(item, clean(plain(item)))} stands in a list of texts. {advice(field)}")
+        return _entered(_several(field, value, system), ", ".join(value), line)
+    return _entered(_bare(field, value, source, system), plain(value), line)
+
+
+def _bare(field: Field, value: object, source: str, system: System) -> _Found:
+    """A value of TOML that is no text."""
     shown = _shown(value, clean(source))
     if isinstance(value, bool):
         if field.kind == "yes_no":
-            return Found(value, "yes_no")
+            return value, "yes_no", None, None
         raise Wrong(f"{shown} is yes or no, not {_label(field)}. {advice(field)}")
     if isinstance(value, (int, float)) and not field.many:
         return _number(field, value, shown, system)
@@ -109,31 +114,40 @@ def _bound(field: Field, value: float | None, system: System) -> str:
     return show(value, field.kind, system)
 
 
-def _several(field: Field, parts: list[str], system: System) -> Found:
+def _entered(found: _Found, text: str, line: int | None, *, option: bool = False) -> Entered:
+    value, kind, spread, currency = found
+    return Entered(value=value, text=text, line=line, spread=spread, option=option, currency=currency, kind=kind)
+
+
+def _read(field: Field, text: str, system: System) -> _Found:
+    return _several(field, split(text), system) if field.many else _one(field, text, system)
+
+
+def _several(field: Field, parts: list[str], system: System) -> _Found:
     if field.many == "three" and len(parts) != 3:
         raise Wrong(f"There {'is one value' if len(parts) == 1 else f'are {len(parts)} values'} here. {advice(field)}")
     if len(parts) > MOST_VALUES:
         raise Wrong(f"There are {len(parts)} values here; {MOST_VALUES} are the most that make sense.")
     found = [_one(field, part, system) for part in parts]
-    if any(one.spread is not None for one in found):
+    if any(one[2] is not None for one in found):
         raise Wrong("A value in a list takes no ±. Write it without.")
-    return Found(tuple(one.value for one in found), field.kind)
+    return tuple(one[0] for one in found), field.kind, None, None
 
 
-def _one(field: Field, text: str, system: System) -> Found:
+def _one(field: Field, text: str, system: System) -> _Found:
     kind = field.kind
     if kind in ("text", "name"):
         fault = fault_of(field, text)
         if fault is not None:
             raise Wrong(f'"{clean(text)}" {fault}')
-        return Found(text, kind)
+        return text, kind, None, None
     if kind == "word":
-        return Found(_choice(field, text), kind)
+        return _choice(field, text), kind, None, None
     if kind == "yes_no":
         answer = _YES_NO.get(text.strip().lower())
         if answer is None:
             raise Wrong(f'"{clean(text)}" is neither yes nor no. Write true or false.')
-        return Found(answer, kind)
+        return answer, kind, None, None
     return _quantity(field, text, system)
 
 
@@ -149,7 +163,7 @@ def _choice(field: Field, text: str) -> str:
     raise Wrong(f'"{clean(text)}" is not among the words for this.{hint} {advice(field)}')
 
 
-def _quantity(field: Field, text: str, system: System) -> Found:
+def _quantity(field: Field, text: str, system: System) -> _Found:
     if field.table == "spreads":  # half-widths are often written with their sign
         text = text.strip().removeprefix("±").removeprefix("+/-")
     try:
@@ -157,10 +171,10 @@ def _quantity(field: Field, text: str, system: System) -> Found:
     except UnitProblem as problem:
         raise Wrong(f'"{clean(text)}" {problem.advice}') from None
     _check(field, reading.value, reading.kind, f'"{clean(text)}"', system)
-    return Found(reading.value, reading.kind, reading.spread, reading.currency)
+    return reading.value, reading.kind, reading.spread, reading.currency
 
 
-def _number(field: Field, value: int | float, shown: str, system: System) -> Found:
+def _number(field: Field, value: int | float, shown: str, system: System) -> _Found:
     """A bare number: right for a count or a plain number, else the sentence about its missing unit."""
     kind = field.kind
     if isinstance(value, float) and not math.isfinite(value):
@@ -169,12 +183,12 @@ def _number(field: Field, value: int | float, shown: str, system: System) -> Fou
         if isinstance(value, float):
             raise Wrong(f"{shown} is not a whole number. {advice(field)}")
         _check(field, value, kind, shown, system)
-        return Found(value, kind)
+        return value, kind, None, None
     if kind in ("number", "month"):
         if isinstance(value, float) and kind == "month":
             raise Wrong(f"{shown} is not a month. {advice(field)}")
         _check(field, value, kind, shown, system)
-        return Found(value if kind == "month" else float(value), kind)
+        return value if kind == "month" else float(value), kind, None, None
     if kind in ("text", "name", "word"):
         raise Wrong(f"{shown} is a number where {_label(field)} is due. {advice(field)}")
     try:
@@ -222,5 +236,8 @@ def _shown(value: object, source: str) -> str:
     return source
 
 
-def _plain(value: object) -> str:
+def plain(value: object) -> str:
+    """A value as somebody would have typed it, quotes apart."""
+    if isinstance(value, list):
+        return ", ".join(str(item) for item in value)
     return str(value).lower() if isinstance(value, bool) else str(value)

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from difflib import get_close_matches
 
 from coldbox.project.fields import Field
 
@@ -24,6 +23,8 @@ def clean(text: str, longest: int = _QUOTED) -> str:
 
 def nearest(word: str, known: Iterable[str]) -> str | None:
     """The known word closest to this one, or None when none is close."""
+    from difflib import get_close_matches
+
     folded = {one.casefold(): one for one in known}
     close = get_close_matches(word[:LONGEST_NAME].casefold(), folded, n=1, cutoff=0.55)
     return folded[close[0]] if close else None

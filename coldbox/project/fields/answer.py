@@ -5,12 +5,14 @@ from __future__ import annotations
 from coldbox.project.fields.declare import TRADE, Field, Table, notes
 
 TABLES = (
-    Table("sizing", "one", "How the capacity is made from the heat."),
-    Table("money", "one", "What energy and insulation cost. Any three capital letters are a currency."),
+    Table(name="sizing", form="one", help="How the capacity is made from the heat."),
+    Table(name="money", form="one", help="What energy and insulation cost. Any three capital letters are a currency."),
     Table(
-        "spreads", "one", "How sure the usual figures are, where the file gives no ±: half-widths that hold 95 of 100."
+        name="spreads",
+        form="one",
+        help="How sure the usual figures are, where the file gives no ±: half-widths that hold 95 of 100.",
     ),
-    Table("fit", "one", "Written by the fit to a logger record: factors on the box's own figures."),
+    Table(name="fit", form="one", help="Written by the fit to a logger record: factors on the box's own figures."),
 )
 
 _SIZE = "sizing"

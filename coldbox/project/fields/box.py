@@ -6,16 +6,30 @@ from coldbox.project.fields.declare import TRADE, Field, Table, library, name, n
 from coldbox.project.model import FACES
 
 TABLES = (
-    Table("box", "one", "The cold room or container. The front is the face one stands before to open it."),
-    Table("box.limits", "list", "When the box itself has failed.", 20),
     Table(
-        "constructions",
-        "named",
-        "What a wall is made of, by a name of your own: its layers, or its R or U as quoted by the maker.",
+        name="box", form="one", help="The cold room or container. The front is the face one stands before to open it."
     ),
-    Table("constructions.layers", "list", "The layers of a construction, from the outside in.", 50),
-    Table("faces", "named", "One of the six faces, where it differs from what [box] says for all.", 6, FACES),
-    Table("panels", "list", "A stretch of a face that is different and never opens: a window, a wall to another room."),
+    Table(name="box.limits", form="list", help="When the box itself has failed.", limit=20),
+    Table(
+        name="constructions",
+        form="named",
+        help="What a wall is made of, by a name of your own: its layers, or its R or U as quoted by the maker.",
+    ),
+    Table(
+        name="constructions.layers", form="list", help="The layers of a construction, from the outside in.", limit=50
+    ),
+    Table(
+        name="faces",
+        form="named",
+        help="One of the six faces, where it differs from what [box] says for all.",
+        limit=6,
+        only=FACES,
+    ),
+    Table(
+        name="panels",
+        form="list",
+        help="A stretch of a face that is different and never opens: a window, a wall to another room.",
+    ),
 )
 
 COLOURS = ("white", "light", "medium", "dark", "bare metal")

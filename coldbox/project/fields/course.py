@@ -5,12 +5,16 @@ from __future__ import annotations
 from coldbox.project.fields.declare import TRADE, Field, Table, name, notes
 
 TABLES = (
-    Table("outage", "one", "When the power goes, and what is asked."),
-    Table("outage.events", "list", "What happens meanwhile."),
-    Table("trip", "one", "A trip of a truck or a box: legs and stops."),
-    Table("trip.legs", "list", "A stretch driven."),
-    Table("trip.stops", "list", "A stop: the door opens, goods leave. Stop n follows leg n unless it names one."),
-    Table("trip.stops.deliver", "list", "What leaves the box at a stop."),
+    Table(name="outage", form="one", help="When the power goes, and what is asked."),
+    Table(name="outage.events", form="list", help="What happens meanwhile."),
+    Table(name="trip", form="one", help="A trip of a truck or a box: legs and stops."),
+    Table(name="trip.legs", form="list", help="A stretch driven."),
+    Table(
+        name="trip.stops",
+        form="list",
+        help="A stop: the door opens, goods leave. Stop n follows leg n unless it names one.",
+    ),
+    Table(name="trip.stops.deliver", form="list", help="What leaves the box at a stop."),
 )
 
 _OUT = "outage"

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import Literal, NamedTuple
 
+from coldbox.record import Record
+
 TRADE = "trade-practice"
 
 
@@ -42,18 +44,18 @@ class Field(NamedTuple):
         return self.kind in ("table", "list")
 
 
-class Table(NamedTuple):
+class Table(Record):
     """One table of the file.
 
     `form`: "one" `[box]`, "named" `[constructions.NAME]`, "list" `[[doors]]`. `limit`: how many blocks it may have.
-    `names`: the only names a "named" table may have. `named_after`: the key that names a thing without a name.
+    `only`: the only names a "named" table may have. `named_after`: the key that names a thing without a name.
     """
 
     name: str
     form: Literal["one", "named", "list"]
     help: str
     limit: int = 500
-    names: tuple[str, ...] = ()
+    only: tuple[str, ...] = ()
     named_after: str = ""
 
 

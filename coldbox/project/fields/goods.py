@@ -7,16 +7,29 @@ from coldbox.project.fields.declare import TRADE, Field, Table, library, name, n
 
 TABLES = (
     Table(
-        "lots", "list", "A quantity of one product that arrives each day, is stored, or both.", named_after="product"
+        name="lots",
+        form="list",
+        help="A quantity of one product that arrives each day, is stored, or both.",
+        named_after="product",
     ),
     Table(
-        "lots.composition",
-        "one",
-        "What the product is made of, as shares of its mass. Without the fibre they sum to 100 %.",
+        name="lots.composition",
+        form="one",
+        help="What the product is made of, as shares of its mass. Without the fibre they sum to 100 %.",
     ),
-    Table("lots.respiration", "list", "Heat that living produce gives off, at two temperatures or more.", 50),
-    Table("lots.limits", "list", "When the lot has failed.", 20),
-    Table("packs", "list", "Ice, eutectic plates, dry ice: coolant that needs no power.", named_after="kind"),
+    Table(
+        name="lots.respiration",
+        form="list",
+        help="Heat that living produce gives off, at two temperatures or more.",
+        limit=50,
+    ),
+    Table(name="lots.limits", form="list", help="When the lot has failed.", limit=20),
+    Table(
+        name="packs",
+        form="list",
+        help="Ice, eutectic plates, dry ice: coolant that needs no power.",
+        named_after="kind",
+    ),
 )
 
 _LOT = "lots"

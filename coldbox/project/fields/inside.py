@@ -5,15 +5,21 @@ from __future__ import annotations
 from coldbox.project.fields.declare import TRADE, Field, Table, library, name, notes
 
 TABLES = (
-    Table("people", "list", "People at work in the room."),
-    Table("lights", "list", "Lamps in the room."),
-    Table("motors", "list", "Motors other than the evaporator's fans.", named_after="kind"),
-    Table("trucks", "list", "Forklifts and pallet trucks.", named_after="kind"),
-    Table("heaters", "list", "Heaters other than a door's: under the floor, in a drain, in a relief port.",
-          named_after="kind"),
-    Table("machine", "one", "The evaporator's fans and defrost, and the chosen unit if there is one."),
-    Table("quoted", "list", "A printed figure that stands in for entries of the account, with its source."),
-)  # fmt: skip
+    Table(name="people", form="list", help="People at work in the room."),
+    Table(name="lights", form="list", help="Lamps in the room."),
+    Table(name="motors", form="list", help="Motors other than the evaporator's fans.", named_after="kind"),
+    Table(name="trucks", form="list", help="Forklifts and pallet trucks.", named_after="kind"),
+    Table(
+        name="heaters",
+        form="list",
+        help="Heaters other than a door's: under the floor, in a drain, in a relief port.",
+        named_after="kind",
+    ),
+    Table(name="machine", form="one", help="The evaporator's fans and defrost, and the chosen unit if there is one."),
+    Table(
+        name="quoted", form="list", help="A printed figure that stands in for entries of the account, with its source."
+    ),
+)
 
 _PEOPLE = "people"
 _LIGHT = "lights"

@@ -7,8 +7,8 @@ from coldbox.project.fields.declare import TRADE, Field, Table, library, name, n
 from coldbox.project.model import FACES
 
 TABLES = (
-    Table("doors", "list", "What opens. Doors are cut out of their face."),
-    Table("ventilation", "list", "Fresh air brought in on purpose."),
+    Table(name="doors", form="list", help="What opens. Doors are cut out of their face."),
+    Table(name="ventilation", form="list", help="Fresh air brought in on purpose."),
 )
 
 _DOOR = "doors"

@@ -5,16 +5,16 @@ from __future__ import annotations
 from coldbox.project.fields.declare import TRADE, Field, Table, library, notes
 
 TABLES = (
-    Table("", "one", "The first lines of the file, above every table."),
+    Table(name="", form="one", help="The first lines of the file, above every table."),
     Table(
-        "site",
-        "one",
-        "The place and its design day. Needed as soon as a wall, door or panel touches outdoors, ground or road.",
+        name="site",
+        form="one",
+        help="The place and its design day. Needed as soon as a wall, door or panel touches outdoors, ground or road.",
     ),
     Table(
-        "neighbours",
-        "named",
-        "A room behind a wall, by a name of your own. Walls and doors name it as their neighbour.",
+        name="neighbours",
+        form="named",
+        help="A room behind a wall, by a name of your own. Walls and doors name it as their neighbour.",
     ),
 )
 
