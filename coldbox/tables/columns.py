@@ -105,8 +105,8 @@ def _share(required: bool = True) -> Column:
     return Column(kind="number", low=0.0, high=1.0, required=required)
 
 
-def _month_values(unit: str, low: float, high: float, required: bool = True) -> Column:
-    return Column(kind="numbers", unit=unit, low=low, high=high, length=12, required=required)
+def _by_month(unit: str, low: float, high: float) -> Column:
+    return Column(kind="numbers", unit=unit, low=low, high=high, length=12)
 
 
 TEXT = Column(kind="text")
@@ -228,8 +228,8 @@ COLUMNS: Mapping[str, Mapping[str, Column]] = {
         "daily_range_k": _number("K", 1, 25),
         "annual_mean_c": _number("°C", -30, 40),
         "yearly_swing_k": _number("K, half of warmest less coldest month", 0, 40),
-        "monthly_mean_c": _month_values("°C", -60, 50),
-        "monthly_dry_bulb_c": _month_values("°C", -60, 60, required=False),
+        "monthly_source": TEXT,
+        "monthly_mean_c": _by_month("°C", -60, 50),
         "tau_beam": _number("", 0.2, 1.2),
         "tau_diffuse": _number("", 1.0, 3.5),
         "verified": Column(kind="yes_no"),

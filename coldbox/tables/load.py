@@ -52,12 +52,15 @@ def figures(table: str, column: str, folder: Path = FOLDER) -> Mapping[str, floa
     For searches over a long table, such as the nearest place. Rows without the column are left out.
     """
     found: dict[str, float] = {}
-    head, wanted = "", f"{column} = "
-    for line in _text(table, folder).split("\n"):
-        if line.startswith("["):
-            head = _name(line)
-        elif head and line.startswith(wanted):
-            found[head] = float(line.removeprefix(wanted).partition("#")[0])
+    text, wanted = "\n" + _text(table, folder), f"\n{column} = "
+    at = text.find(wanted)
+    while at >= 0:
+        head = text.rfind("\n[", 0, at) + 1
+        name = _name(text[head : text.find("\n", head)])
+        start = at + len(wanted)
+        end = text.find("\n", start)
+        found[name] = float(text[start : len(text) if end < 0 else end].partition("#")[0])
+        at = text.find(wanted, start)
     return found
 
 
@@ -146,8 +149,9 @@ def _checked(table: str, name: str, values: object, folder: Path) -> Row:
     fault = columns.row_fault(declared, values) or (columns.also_fault(also) if also is not None else "")
     if fault:
         raise TableFault(table, name, fault)
-    if table != "sources" and _block("sources", values["source"], folder) is None:
-        raise TableFault(table, name, f'source "{values["source"]}" is not in sources.toml')
+    for key in ("source", "monthly_source"):
+        if key in values and _block("sources", values[key], folder) is None:
+            raise TableFault(table, name, f'{key} "{values[key]}" is not in sources.toml')
     row = columns.cleaned(declared, values)
     return MappingProxyType(row if also is None else {**row, "also": tuple(also)})
 
