@@ -72,7 +72,7 @@ def test_wet_bulb_is_the_librarys(table):
     np.testing.assert_allclose(ours[kept], theirs[kept], atol=2e-3)
 
 
-def test_real_gas_library(table):
+def test_real_gas_library():
     """Ideal gases against a real-gas library: within 1 % of water, 0.1 % of volume and 0.5 kJ/kg."""
     for t, rh in [(-20.0, 0.8), (-5.0, 0.9), (2.0, 0.85), (20.0, 0.5), (32.0, 0.6), (45.0, 0.3)]:
         w = moist_air.humidity_ratio(t, rh, P)
@@ -105,7 +105,8 @@ def test_dew_point_below_wet_bulb_below_dry_bulb(t, rh, p):
 def test_there_and_back(t, rh, p):
     w = moist_air.humidity_ratio(t, rh, p)
     assert moist_air.relative_humidity(t, w, p) == pytest.approx(rh, rel=1e-12)
-    assert moist_air.saturation_humidity_ratio(moist_air.dew_point(w, p), p) == pytest.approx(w, rel=1e-5)
+    # At 0 °C the curves over ice and over water lie 1e-4 apart.
+    assert moist_air.saturation_humidity_ratio(moist_air.dew_point(w, p), p) == pytest.approx(w, rel=1.2e-4)
     wet = moist_air.wet_bulb(t, w, p)
     assert moist_air.humidity_ratio_from_wet_bulb(t, wet, p) == pytest.approx(w, rel=1e-7, abs=1e-10)
 
