@@ -10,8 +10,8 @@ from coldbox.units.refused import Refused
 POINTS = ("N", "NNE", "NE", "ENE", "E", "ESE", "SE", "SSE", "S", "SSW", "SW", "WSW", "W", "WNW", "NW", "NNW")
 _WORDS = {"north": "N", "east": "E", "south": "S", "west": "W"}
 _SIDES = {"N": 1.0, "E": 1.0, "S": -1.0, "W": -1.0}
-_MINUTES = re.compile(r"° ?(\d{1,2}(?:\.\d+)?)' ?(?:(\d{1,2}(?:\.\d+)?)\")?", re.ASCII)
-_DEGREES = re.compile(r"(?:°|deg(?:rees?)?\.?)$", re.ASCII | re.IGNORECASE)
+_MINUTES = r"(?a)° ?(\d{1,2}(?:\.\d+)?)' ?(?:(\d{1,2}(?:\.\d+)?)\")?"
+_DEGREES = r"(?ai)(?:°|deg(?:rees?)?\.?)$"
 
 
 def read_angle(text: str, kind: str, bare: bool) -> float:
@@ -27,13 +27,13 @@ def read_angle(text: str, kind: str, bare: bool) -> float:
     value, end = read_number(text)
     rest = text[end:].strip()
     side, rest = _side(rest)
-    minutes = _MINUTES.fullmatch(rest)
+    minutes = re.fullmatch(_MINUTES, rest)
     if minutes:
         parts = float(minutes.group(1)) / 60.0 + float(minutes.group(2) or 0.0) / 3600.0
         if float(minutes.group(1)) >= 60.0 or float(minutes.group(2) or 0.0) >= 60.0:
             raise Refused("has more than 59 minutes or seconds of arc")
         value = value - parts if value < 0 or text[0] == "-" else value + parts
-    elif rest and not _DEGREES.fullmatch(rest):
+    elif rest and not re.fullmatch(_DEGREES, rest):
         raise Refused(f'has "{rest}" where degrees should stand')
     elif not rest and side is None and not bare:
         raise Refused("has no unit")

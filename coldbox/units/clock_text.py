@@ -9,11 +9,11 @@ from coldbox.units.clock import ALWAYS, NEVER, Schedule, Span
 from coldbox.units.numbers import read_number
 from coldbox.units.refused import Refused
 
-_CLOCK = re.compile(r"(\d{1,2})(?::(\d{2}))? ?(?:([aApP])\.?[mM]\.?)?", re.ASCII)
-_DAY_FIRST = re.compile(r"day (\d{1,3}),? +(?:at )?", re.ASCII | re.IGNORECASE)
-_DAY_LAST = re.compile(r",? +(?:on )?day (\d{1,3})$", re.ASCII | re.IGNORECASE)
-_OFFSET = re.compile(r"(?:UTC|GMT) ?(?:([+-]) ?(\d{1,2})(?::(\d{2})|\.(\d{1,2}))?)?", re.ASCII | re.IGNORECASE)
-_STRETCH = re.compile(r" ?(?:-+| to ) ?", re.ASCII | re.IGNORECASE)
+_CLOCK = r"(?a)(\d{1,2})(?::(\d{2}))? ?(?:([aApP])\.?[mM]\.?)?"
+_DAY_FIRST = r"(?ai)day (\d{1,3}),? +(?:at )?"
+_DAY_LAST = r"(?ai),? +(?:on )?day (\d{1,3})$"
+_OFFSET = r"(?ai)(?:UTC|GMT) ?(?:([+-]) ?(\d{1,2})(?::(\d{2})|\.(\d{1,2}))?)?"
+_STRETCH = r"(?ai) ?(?:-+| to ) ?"
 MONTHS = (
     "January",
     "February",
@@ -35,7 +35,7 @@ MOST_STRETCHES = 24
 def read_clock(text: str) -> float:
     """Hours since midnight of the first day: "14:00" is 14.0, "day 2 06:00" is 30.0, "2:30 pm" is 14.5."""
     day = 1
-    first, last = _DAY_FIRST.match(text), _DAY_LAST.search(text)
+    first, last = re.match(_DAY_FIRST, text), re.search(_DAY_LAST, text)
     if first:
         day, text = int(first.group(1)), text[first.end() :]
     elif last:
@@ -46,7 +46,7 @@ def read_clock(text: str) -> float:
 
 
 def _time_of_day(text: str) -> float:
-    match = _CLOCK.fullmatch(text)
+    match = re.fullmatch(_CLOCK, text)
     if match is None or (match.group(2) is None and match.group(3) is None):
         raise Refused("is not a clock time with hours and minutes")
     hours, minutes, half = int(match.group(1)), int(match.group(2) or 0), match.group(3)
@@ -81,11 +81,11 @@ def read_hours(text: str) -> Schedule:
 def _stretch(text: str) -> list[Span]:
     if not text:
         raise Refused("has a comma with no hours beside it")
-    ends = _STRETCH.split(text, maxsplit=1)
+    ends = re.split(_STRETCH, text, maxsplit=1)
     if len(ends) != 2:
         raise Refused("has no two clock times with a - between them")
     start = _time_of_day(ends[0].strip())
-    until = _CLOCK.match(ends[1])
+    until = re.match(_CLOCK, ends[1])
     if until is None:
         raise Refused("has no two clock times with a - between them")
     end = _time_of_day(until.group().strip())
@@ -119,7 +119,7 @@ def _schedule(spans: list[Span]) -> Schedule:
 
 def read_utc_offset(text: str) -> float:
     """Hours ahead of UTC: "UTC+2" is 2.0, "UTC-3:30" is -3.5."""
-    match = _OFFSET.fullmatch(text)
+    match = re.fullmatch(_OFFSET, text)
     if match is None:
         raise Refused("is not an offset from UTC")
     sign, hours, minutes, decimals = match.groups()

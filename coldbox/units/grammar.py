@@ -191,8 +191,8 @@ def _unitless(kind: Kind) -> bool:
     return kind.reader in ("number", "count")
 
 
-_R_FIRST = re.compile(r"r(si)?(?:-value)?[ -]*(?=[0-9.])", re.IGNORECASE)
-_R_PER_INCH = re.compile(r"(?:r[ -]*)([0-9.]+) ?(?:/|per ) ?in(?:ch|\.)?", re.IGNORECASE)
+_R_FIRST = r"(?i)r(si)?(?:-value)?[ -]*(?=[0-9.])"
+_R_PER_INCH = r"(?i)(?:r[ -]*)([0-9.]+) ?(?:/|per ) ?in(?:ch|\.)?"
 
 
 def _quantity(text: str, kind: Kind, bare: str | None) -> _Part:
@@ -206,23 +206,27 @@ def _quantity(text: str, kind: Kind, bare: str | None) -> _Part:
         if bare in ("R", "RSI"):
             return _Part(value * (R_VALUE if bare == "R" else 1.0), bare)
         written = plain(bare)
+    several = kind.compound and any(sign in "0123456789" for sign in written)
     try:
         factor, dims = unit(written)
-    except Refused:
-        if kind.compound and any(sign.isdigit() for sign in written):
+        if dims != kind.dims:
+            raise Refused(_wrong_kind(written, kind, dims))
+    except Refused as whole:
+        if not several:
+            raise
+        try:
             return _Part(_compound(text, kind), "")
-        raise
-    if dims != kind.dims:
-        raise Refused(_wrong_kind(written, kind, dims))
+        except Refused as parts:
+            raise (parts if '"' in whole.reason else whole) from None
     return _Part(value * factor / kind.scale, written)
 
 
 def _r_value(text: str, kind: Kind) -> _Part:
     if kind.name == "conductivity":
-        match = _R_PER_INCH.fullmatch(text)
+        match = re.fullmatch(_R_PER_INCH, text)
         if match and match.group(1).count(".") <= 1 and match.group(1) != "." and float(match.group(1)) > 0.0:
             return _Part(0.0254 / (float(match.group(1)) * R_VALUE), "")
-    start = _R_FIRST.match(text)
+    start = re.match(_R_FIRST, text)
     if start is None:
         raise Refused("does not begin with a number")
     if kind.name != "resistance":
@@ -241,7 +245,7 @@ def _r_with_unit(value: float, written: str, metric: bool) -> _Part:
     return _Part(value * factor, written)
 
 
-_COMPOUND_UNIT = re.compile(r"[ ]?([A-Za-z]+\.?|'|\")[ ]?(?:-(?=[0-9 ]))?,?[ ]?")
+_COMPOUND_UNIT = r"[ ]?([A-Za-z]+\.?|'|\")[ ]?(?:-(?=[0-9 ]))?,?[ ]?"
 
 
 def _compound(text: str, kind: Kind) -> float:
@@ -253,7 +257,7 @@ def _compound(text: str, kind: Kind) -> float:
         value, end = read_number(text, place)
         if value < 0.0:
             raise Refused("has a minus in the middle")
-        match = _COMPOUND_UNIT.match(text, end)
+        match = re.compile(_COMPOUND_UNIT).match(text, end)
         if match is None:
             raise Refused("has a number without a unit in it")
         factor, dims = unit(match.group(1))
@@ -308,9 +312,7 @@ def _share(text: str, _kind: Kind, bare: str | None) -> _Part:
     raise Refused(f'has "{written}" where % should stand')
 
 
-_COUNTED = re.compile(
-    r"(?:passages?|openings?|times|cycles|air ?changes?|changes|ac(?=/)|x(?=/| ))(?= ?/| per| an? ) ?", re.IGNORECASE
-)
+_COUNTED = r"(?i)(?:passages?|openings?|times|cycles|air ?changes?|changes|ac(?=/)|x(?=/| ))(?= ?/| per| an? ) ?"
 
 
 def _rate(text: str, kind: Kind, bare: str | None) -> _Part:
@@ -320,7 +322,7 @@ def _rate(text: str, kind: Kind, bare: str | None) -> _Part:
         raise Refused("has no unit")
     if written.casefold() in ("ach", "air changes", "air changes an hour"):
         written = "/h"
-    written = _COUNTED.sub("", written, count=1)
+    written = re.sub(_COUNTED, "", written, count=1)
     if not written.startswith(("/", "1/", "per ", "a ", "an ")) and "^-1" not in written:
         raise Refused(f'has "{written}" where "/h" or "/day" should stand')
     factor, dims = unit(written if written[0] != "a" else "/" + written.split(" ", 1)[1])
@@ -365,7 +367,7 @@ def _number(text: str, _kind: Kind, _bare: str | None) -> _Part:
 
 # Prices.
 
-_CURRENCY = re.compile(r"(?<![A-Za-z])([A-Z]{3})(?![A-Za-z])|€")
+_CURRENCY = r"(?<![A-Za-z])([A-Z]{3})(?![A-Za-z])|€"
 _NO_CURRENCY = frozenset({"BTU", "MBH", "CFM", "RSI"})
 
 
@@ -373,7 +375,7 @@ def _price(text: str, kind: Kind, bare: str | None) -> Reading:
     text = _checked(text)
     if bare is not None and _needs_unit(text):
         text = f"{text} {plain(bare)}"
-    found = [match for match in _CURRENCY.finditer(text) if match.group() not in _NO_CURRENCY]
+    found = [match for match in re.finditer(_CURRENCY, text) if match.group() not in _NO_CURRENCY]
     if any(sign in text for sign in "$£¥"):
         raise Refused("has a sign that several currencies share (write the three letters, such as USD)")
     if not found:
@@ -381,7 +383,7 @@ def _price(text: str, kind: Kind, bare: str | None) -> Reading:
     if len({match.group() for match in found}) > 1:
         raise Refused("names two currencies")
     currency = found[0].group(1) or "EUR"
-    rest = _CURRENCY.sub(lambda match: match.group() if match.group() in _NO_CURRENCY else " ", text)
+    rest = re.sub(_CURRENCY, lambda match: match.group() if match.group() in _NO_CURRENCY else " ", text)
     rest = re.sub(r" +", " ", rest).strip()
     if "per " not in rest and "/" not in rest:
         raise Refused("does not say per what")

@@ -39,6 +39,8 @@ def show(
         return special(value)
     if declared.name == "length" and system == "IP" and isinstance(value, (int, float)):
         return _feet_and_inches(float(value), digits or declared.digits)
+    if declared.name == "duration" and digits is None:
+        return show_duration(_float(value))
     number, unit = show_number(value, kind, system, digits)
     if declared.name == "resistance" and system == "IP":
         return f"R-{number}"

@@ -29,13 +29,13 @@ _WHOLE: dict[str, tuple[float, Dims]] = {
 }
 _FACTOR = re.compile(r"([A-Za-z°'\"$£¥€%]+)(?:\^(-?[1-9])|([1-9]))?")
 _WORDS = (
-    (re.compile(r"\bsquare |\bsq\.? ?(?=ft|feet|foot|in|m\b|met|cm|yd|yard)", re.I), "²"),
-    (re.compile(r"\bcubic |\bcu\.? ?(?=ft|feet|foot|in|m\b|met|cm|yd|yard)", re.I), "³"),
+    (r"(?i)\bsquare |\bsq\.? ?(?=ft|feet|foot|in|m\b|met|cm|yd|yard)", "²"),
+    (r"(?i)\bcubic |\bcu\.? ?(?=ft|feet|foot|in|m\b|met|cm|yd|yard)", "³"),
 )
-_PER = re.compile(r" ?\bper\b ?| an? (?=day|week|hour|minute|second|m\b|ft\b)", re.I)
-_SCALE = re.compile(r"(?:\bdeg(?:rees?|s)?\.? ?|° ?)(?=[CFK]\b)", re.I)
-_TONS = re.compile(r"\b(short|long|metric|US|imp) (ton|gal)(?:ne|lon)?s?\b", re.I)
-_REFRIGERATION = re.compile(r"\btons?(?: of)? refrigeration\b|\brefrigeration tons?\b", re.I)
+_PER = r"(?i) ?\bper\b ?| an? (?=day|week|hour|minute|second|m\b|ft\b)"
+_SCALE = r"(?i)(?:\bdeg(?:rees?|s)?\.? ?|° ?)(?=[CFK]\b)"
+_TONS = r"(?i)\b(short|long|metric|US|imp) (ton|gal)(?:ne|lon)?s?\b"
+_REFRIGERATION = r"(?i)\btons?(?: of)? refrigeration\b|\brefrigeration tons?\b"
 _PHRASES = ("short ton", "long ton", "metric ton", "US gal", "imp gal", "ton of refrigeration")
 
 
@@ -76,11 +76,11 @@ def _in_signs(text: str) -> str:
     """Words such as "per", "sq ft" and "deg F" in signs."""
     if " " in text or "." in text or text[:2].lower() in ("sq", "cu", "de"):
         for pattern, sign in _WORDS:
-            text = pattern.sub(sign, text)
-        text = _PER.sub("/", text)
-        text = _REFRIGERATION.sub("ton of refrigeration", text)
-        text = _TONS.sub(lambda found: _phrase(found.group(1), found.group(2)), text)
-    return _SCALE.sub("°", text) if "°" in text or "deg" in text.lower() else text
+            text = re.sub(pattern, sign, text)
+        text = re.sub(_PER, "/", text)
+        text = re.sub(_REFRIGERATION, "ton of refrigeration", text)
+        text = re.sub(_TONS, lambda found: _phrase(found.group(1), found.group(2)), text)
+    return re.sub(_SCALE, "°", text) if "°" in text or "deg" in text.lower() else text
 
 
 def _phrase(first: str, second: str) -> str:

@@ -10,8 +10,8 @@ from coldbox.units.refused import Refused
 SHARES = ("water", "protein", "fat", "carbohydrate", "fibre", "ash")
 _YES = frozenset({"yes", "y", "true", "on"})
 _NO = frozenset({"no", "n", "false", "off"})
-_COUNT = re.compile(r"\+?[0-9]{1,9}", re.ASCII)
-_SPOKEN_SHARE = re.compile(r"([a-z]+) ?[:=]? ?(.+)", re.IGNORECASE)
+_COUNT = r"(?a)\+?[0-9]{1,9}"
+_SPOKEN_SHARE = r"(?i)([a-z]+) ?[:=]? ?(.+)"
 _OTHER_NAMES = {"fiber": "fibre", "carbohydrates": "carbohydrate", "carbs": "carbohydrate", "minerals": "ash"}
 LONGEST_WORD = 80
 
@@ -54,7 +54,7 @@ def read_yes_no(text: str) -> bool:
 
 def read_count(text: str) -> int:
     """A whole number, not below zero."""
-    if not _COUNT.fullmatch(text):
+    if not re.fullmatch(_COUNT, text):
         raise Refused("is not a whole number")
     return int(text)
 
@@ -63,7 +63,7 @@ def read_composition(text: str) -> tuple[tuple[str, float], ...]:
     """Shares by name, in the order of SHARES: "water 88 %, protein 3 %"."""
     found: dict[str, float] = {}
     for part in text.split(","):
-        match = _SPOKEN_SHARE.fullmatch(part.strip())
+        match = re.fullmatch(_SPOKEN_SHARE, part.strip())
         name = _OTHER_NAMES.get(match.group(1).lower(), match.group(1).lower()) if match else ""
         if match is None or name not in SHARES:
             raise Refused(f'has "{part.strip()}" where one of {", ".join(SHARES)} should stand with its share')
