@@ -26,17 +26,34 @@ class Air(Record):
     dew_point_c: Number  # frost point below 0 °C
 
 
+class SunDay(Record):
+    """The sun at even instants of the design day, (…, 24 k), k an hour: what hourly means on a surface are made of."""
+
+    altitude: FloatArray  # degrees above the horizon, negative at night
+    azimuth: FloatArray  # degrees clockwise from north
+    beam_normal: FloatArray  # W/m²
+    diffuse_horizontal: FloatArray  # W/m²
+    overcast: bool
+
+
 class Weather(Record):
     """The design day outdoors."""
 
     air: Air  # (…, 24)
     wind: Number
     sky_c: FloatArray  # sky temperature
-    sun_altitude: FloatArray  # degrees above the horizon, negative at night
-    sun_azimuth: FloatArray  # degrees clockwise from north
-    beam_normal: FloatArray  # W/m²
-    diffuse_horizontal: FloatArray  # W/m²
+    sun: SunDay | None  # None: a sky without sun
     ground_reflects: Number
+
+
+class Sheet(Record):
+    """One layer as it stands in its wall, with temperature, ageing and moisture in its resistance."""
+
+    material: str
+    thickness: Number
+    resistance: Number  # m²K/W
+    heat_capacity: Number  # J/(m²K), thickness x density x specific heat; 0 for an air space
+    foam: bool
 
 
 class Surface(Record):
@@ -47,6 +64,7 @@ class Surface(Record):
     face: str
     role: Literal["face", "panel", "door"]
     construction: Construction | None  # None: part of a box with a k_value
+    sheets: tuple[Sheet, ...]  # the layers, outside first; one for a quoted figure
     resistance: Number  # m²K/W of the layers alone, factors applied, without films
     thickness: Number
     area: Number  # m², inside

@@ -327,7 +327,7 @@ def box_project(
         "faces": {name: face(name, **{**every_face, **faces.get(name, {})}) for name in m.FACES},
         "machine": machine(),
         "outage": m.Outage(at=14.0, lasts=None, asked=86400.0, horizon=259200.0, going_on=(), dry_bulb=None, events=()),
-        "sizing": m.Sizing(run_hours=18 * 3600.0, safety=0.1, unit_tested_with_body=False),
+        "sizing": m.Sizing(run_hours=18 * 3600.0, safety=0.1, tested_with_unit=False),
         "money": m.Money(currency=None, tariff=None, insulation_cost=None, years=10, interest=0.0),
         "spread_factors": m.Spreads(
             foam=0.1, ageing=0.05, air=0.3, openings=0.3, ambient=2.0, enthalpy=0.1, freezing_point=0.3, films=0.2
