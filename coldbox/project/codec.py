@@ -155,7 +155,8 @@ class _Walk:
                 if entered is not None:
                     values[word] = entered
         for field in declared.values():
-            if field.required and field.key not in data:
+            # What is copied from the shop library may leave its keys there: `resolve` knows which it has.
+            if field.required and field.key not in data and "library" not in data:
                 self.problem(f"{field.key} is missing. Write one, such as {example(field)}.", before + field.key, key)
         line = self.lines.line(key) if key else None
         return Block(table=table, path=path, name=name, line=line, values=values, children=children)

@@ -161,20 +161,10 @@ class _Reading:
 
     def _value(self, field: fields.Field, key: tuple[str | int, ...], value: Any) -> Entered | None:
         try:
-            found = values.from_toml(field, value, str(value))
+            return values.from_toml(field, value, str(value), None)
         except values.Wrong as wrong:
             self.problem(key, str(wrong))
             return None
-        text = value if isinstance(value, str) else ", ".join(value) if isinstance(value, list) else str(value)
-        return Entered(
-            value=found.value,
-            text=text,
-            line=None,
-            spread=found.spread,
-            option=False,
-            currency=found.currency,
-            kind=found.kind,
-        )
 
 
 def library(near: str | os.PathLike[str]) -> Library:

@@ -254,8 +254,9 @@ def pack(work: Work, block: Block, name: str, box: Box) -> Pack:
     """One pack, complete."""
     reader = Reader(work, "packs", block.path, block)
     reader.on_library("packs", "latent_heat" in block.values)
-    kind = reader.given("kind")
-    kind = kind if isinstance(kind, str) else ""
+    kind = reader.given("kind") or ""
+    if not kind:
+        reader.missing("kind", "Write ice, eutectic, dry ice or own.")
     found: Mapping[str, Any] = NOTHING
     if kind and kind != "own":
         found = row("packs", kind)

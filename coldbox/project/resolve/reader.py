@@ -106,6 +106,10 @@ class Reader:
             return self
         return self.on(row, library.said(table, row))
 
+    def at(self, key: str) -> str:
+        """The key path of a key; those above every table stand alone."""
+        return f"{self.path}.{key}" if self.path else key
+
     def has(self, key: str) -> bool:
         return key in self.typed or key in self.beneath
 
@@ -123,7 +127,7 @@ class Reader:
     def given(self, key: str) -> Any:
         """The value typed, or of the library; None when there is none. Nothing is filled in."""
         entered = self.typed.get(key)
-        path = f"{self.path}.{key}"
+        path = self.at(key)
         if entered is not None:
             kind: Any = "option" if entered.option else "typed"
             self.work.origins[path] = Origin(kind=kind, text=entered.text, line=entered.line)
@@ -143,7 +147,7 @@ class Reader:
         default = declared_default(self.table, key)
         if default is None:
             return None
-        self.work.origins[f"{self.path}.{key}"] = default[1]
+        self.work.origins[self.at(key)] = default[1]
         return default[0]
 
     def quiet(self, key: str) -> Any:
@@ -158,7 +162,7 @@ class Reader:
         if key in self.typed or key in self.beneath:
             return self.given(key)
         if value is not None or text:
-            self.work.origins[f"{self.path}.{key}"] = Origin(kind=kind, text=text, reason=reason)
+            self.work.origins[self.at(key)] = Origin(kind=kind, text=text, reason=reason)
         return value
 
     def need(self, key: str, advice: str) -> Any:
@@ -170,7 +174,7 @@ class Reader:
 
     def missing(self, key: str, advice: str) -> None:
         """A problem that this key is not there, unless it is known already (typed, but wrong)."""
-        path = f"{self.path}.{key}"
+        path = self.at(key)
         if not self.work.said(path):
             self.work.problem(f"{key} is missing. {advice}", path, self.line)
 
@@ -178,7 +182,7 @@ class Reader:
         """Something wrong with the value of this key (or, with "", with the whole block)."""
         entered = self.typed.get(key)
         line = entered.line if entered is not None else self.line
-        self.work.problem(text, f"{self.path}.{key}" if key else self.path, line)
+        self.work.problem(text, self.at(key) if key else self.path, line)
 
     def text(self, key: str) -> str:
         """What was typed for this key, or in the library."""

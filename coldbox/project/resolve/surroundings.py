@@ -128,6 +128,7 @@ class _Place:
         self.work, self.outdoors, self.on_ground = work, outdoors, on_ground
         self.row: Mapping[str, Any] = {}
         self.row_source = ""
+        self.nearest: tuple[str, float] | None = None
         name = self.reader.given("place")
         self.reader.on_library("places", "latitude" in block.values)
         self.takes = self.reader.value if outdoors else self.reader.quiet
@@ -284,7 +285,9 @@ class _Place:
         """The row of the nearest place of the weather table, and which it is; empty where none is near."""
         if math.isnan(latitude + longitude):
             return {}, ""
-        name, km = nearest_place(latitude, longitude)
+        if self.nearest is None:
+            self.nearest = nearest_place(latitude, longitude)
+        name, km = self.nearest
         if km > FAR_KM:
             return {}, f"the nearest place of the weather table, {name}, is {km:.0f} km away"
         return load.row("weather", name), f"that of {name}, {km:.0f} km away"

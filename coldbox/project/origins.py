@@ -1,0 +1,80 @@
+"""Where the values of a project came from, told to its user."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping
+
+from coldbox.errors import UnitProblem
+from coldbox.project import fields
+from coldbox.project.model import Project
+from coldbox.units import KINDS, parse, show
+
+_LATER = ("outage.", "trip.", "spreads.", "fit.")
+_LATER_KEYS = ("piece", "exposed", "air_film", "wrap", "start_temperature", "minutes", "band", "fittings")
+
+
+def defaults_used(project: Project, *, for_load: bool = False) -> list[tuple[str, str, str]]:
+    """Every default of a project that has an effect.
+
+    project   a complete project
+    for_load  leave out what only an outage or a trip uses
+    result    key path, value in the project's units, reason; the same default of several things is one row, with `*`
+              for their names
+    """
+    merged: dict[tuple[str, str, str], list[str]] = {}
+    for path, origin in project.origins.items():
+        if origin.kind != "default" or (for_load and _later(path)):
+            continue
+        merged.setdefault((_pattern(path), origin.text, origin.reason), []).append(path)
+    return [
+        (paths[0] if len(paths) == 1 else pattern, _shown(paths[0], text, project.units), reason)
+        for (pattern, text, reason), paths in merged.items()
+    ]
+
+
+def _later(path: str) -> bool:
+    return path.startswith(_LATER) or path.rpartition(".")[2] in _LATER_KEYS
+
+
+def _pattern(path: str) -> str:
+    """The key path with `*` for the names in it."""
+    head, _, key = path.rpartition(".")
+    if not head or head in fields.BY_KEY and key in fields.BY_KEY[head]:
+        return path
+    top, dot, rest = head.partition(".")
+    if not dot:
+        return f"{top.partition('[')[0]}.*.{key}"
+    inner = re.search(r"\.(layers|limits|respiration|composition|events|legs|stops|deliver|construction)\b", "." + rest)
+    return f"{top}.*.{key}" if inner is None else f"{top}.*{inner.group(0)}.*.{key}"
+
+
+def declaration(path: str) -> fields.Field | None:
+    """The declaration of a key path such as "doors.main.width" or "constructions.pir100.layers[2].ageing"."""
+    parts = _pattern(path).split(".")
+    table = ".".join(part for part in parts[:-1] if part != "*")
+    if "construction" in parts[1:-1]:  # one that stands inline at its owner
+        table = "constructions.layers" if "layers" in parts else "constructions"
+    elif ".construction." in path:
+        table = "constructions.layers" if ".layers[" in path else "constructions"
+    found: Mapping[str, fields.Field] = fields.BY_KEY.get(table, {})
+    return found.get(parts[-1])
+
+
+def _shown(path: str, text: str, system: str) -> str:
+    """A default in the units of the project; words, and what stands for no value, as they are."""
+    field = declaration(path)
+    if field is None or field.many or field.kind not in KINDS or system == "SI":
+        return text
+    try:
+        return show(parse(text, field.kind).value, field.kind, "IP")
+    except UnitProblem:
+        return text
+
+
+def looked_up(project: Project) -> list[tuple[str, str]]:
+    """What was looked up in the shop library, not copied: owner's key path, and the row with its date."""
+    found = {
+        (path.rpartition(".")[0], origin.reason) for path, origin in project.origins.items() if origin.kind == "library"
+    }
+    return sorted(found)
