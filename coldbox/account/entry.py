@@ -67,16 +67,17 @@ class Load(Record):
 
     project: Project
     entries: tuple[Entry, ...]
-    hours_w: FloatArray  # (…, 24) sum of all entries
-    daily_heat_j: Number  # positive entries unless credit_cold
-    credited_cold_w: Number  # what negative entries take off at the peak hour: credited or, by default, not
-    uncredited_daily_j: Number  # the other sum: with the negative entries taken in (or left out, when credited)
+    hours_w: FloatArray  # (…, 24) sum of all entries, negative ones too
+    daily_heat_j: Number  # of hours_w
+    counted_daily_j: Number  # what the capacity counts: the positive entries, or all with credit_cold
+    cold_w: Number  # mean of what negative entries take off, W, zero or more
     run_hours: Number  # hours a day
     safety: Number
     peak_hour: int
     peak_w: Number  # demand of the peak hour without defrost heat, before safety
-    by_daily_w: Number  # daily heat / running hours x (1 + safety)
+    by_daily_w: Number  # counted daily heat / running hours x (1 + safety)
     by_peak_w: Number  # peak x (1 + safety)
+    by_atp_w: Number | None  # the transport rule, for a box that asks for an ATP class
     required_capacity_w: Number
     governs: Literal["daily", "peak", "atp"]
     frost_kg_per_day: Number

@@ -315,7 +315,7 @@ class Quoted(Record):
     """A printed figure that stands in for entries of the account, with its source."""
 
     name: str
-    group: str
+    group: Literal["transmission", "sun", "infiltration", "product", "internal", "equipment"]
     power: Number  # W while it runs
     hours: Schedule
     latent: Number  # share of it that is latent

@@ -1,0 +1,77 @@
+"""What a careful colleague would say about this box before anything is bought or loaded. Advice, never approval."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+
+import numpy as np
+
+from coldbox.account import cautions, envelope_findings, goods_findings
+from coldbox.account.capacity import Capacity
+from coldbox.account.entry import Entry, Finding
+from coldbox.physics.number import Number
+from coldbox.scene import Scene
+
+ORDER = {"danger": 0, "caution": 1, "note": 2}
+
+
+def findings(scene: Scene, entries: list[Entry], sized: Capacity, facts: Mapping[str, Number]) -> tuple[Finding, ...]:
+    """Every finding that needs no timeline, in order of danger, this box's own before the standing ones."""
+    found = [
+        *envelope_findings.findings(scene, facts),
+        *goods_findings.findings(scene),
+        *_sizing(scene, entries, sized),
+        *cautions.standing(scene),
+    ]
+    return tuple(sorted(found, key=lambda finding: (ORDER[finding.level], finding.standing)))
+
+
+def _sizing(scene: Scene, entries: list[Entry], sized: Capacity) -> Iterator[Finding]:
+    yield from _running_hours(scene)
+    yield from _transport(sized)
+    for entry in entries:
+        if "upper bound" in entry.remark:
+            yield Finding(
+                level="note", id="open-long", text=f"{entry.label}: {entry.remark}.", rule="", path=f"{entry.id}"
+            )
+
+
+def longest_run_hours(scene: Scene) -> float:
+    """The most hours a day a coil may run and still keep clear of frost, by how it defrosts; trade practice."""
+    from coldbox.tables.load import rows
+
+    defrost = scene.project.machine.defrost
+    return max(float(str(one["highest"])) for one in rows("run_hours").values() if one["defrost"] == defrost)
+
+
+def _running_hours(scene: Scene) -> Iterator[Finding]:
+    hours = float(np.max(scene.project.sizing.run_hours)) / 3600.0
+    most = longest_run_hours(scene)
+    if hours > most + 1e-9:
+        yield Finding(
+            level="caution",
+            id="running-hours",
+            text=(
+                f"sized to run {hours:g} h a day; with defrost {scene.project.machine.defrost} the trade allows about"
+                f" {most:g} h, the rest is for defrost and for the day that is hotter than the design day"
+            ),
+            rule="common trade practice",
+            path="sizing.run_hours",
+        )
+
+
+def _transport(sized: Capacity) -> Iterator[Finding]:
+    if sized.by_atp_w is None:
+        return
+    need = np.maximum(sized.by_daily_w, sized.by_peak_w)
+    if np.any(need > sized.by_atp_w):
+        yield Finding(
+            level="caution",
+            id="atp-too-small",
+            text=(
+                f"the ATP rule asks for {float(np.mean(sized.by_atp_w)):.0f} W, this day's own load for"
+                f" {float(np.mean(need)):.0f} W: the rule knows no doors and no warm goods"
+            ),
+            rule="ATP, annex 1",
+            path="box.rules",
+        )

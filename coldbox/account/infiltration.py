@@ -1,0 +1,240 @@
+"""Air that comes in: through doors that open, cracks, by the table of air changes, or on purpose."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+
+from coldbox.account.air_exchange import denser_volume, entry, exchange
+from coldbox.account.entry import Entry, Input
+from coldbox.account.shapes import SECONDS_A_DAY, SECONDS_AN_HOUR, day, over_hours, steady_mean
+from coldbox.errors import OutOfValidity
+from coldbox.physics import doorway, moist_air
+from coldbox.physics.number import FloatArray, Number
+from coldbox.project.model import Door, Ventilation
+from coldbox.scene import Air, Scene
+from coldbox.scene.air import from_humidity_ratio
+from coldbox.tables.load import row, rows
+
+SPENT = "upper bound: one opening exchanges more than the room holds, and what follows meets air no longer cold"
+
+
+def entries(scene: Scene) -> list[Entry]:
+    """Every infiltration entry, by the method the box asks for. The table's air changes hold openings and leakage."""
+    fresh = [_ventilation(scene, one) for one in scene.project.ventilation]
+    air = scene.project.box.air
+    if air == "table":
+        return [_by_table(scene), *fresh]
+    if air == "rate":
+        return [*_by_rate(scene), *fresh]
+    return [*_through_doors(scene), *_leakage(scene), *fresh]
+
+
+def open_share(door: Door) -> FloatArray:
+    """Share of each clock hour that one such door stands open, (24,) or (draws, 24). Raises OutOfValidity above 1."""
+    passages, stood_open = over_hours(door.passages, door.hours), over_hours(door.stood_open, door.hours)
+    return day(doorway.open_share(passages, door.open_each, stood_open))
+
+
+def _air_of(scene: Scene, name: str) -> Air:
+    return scene.airs[name]
+
+
+def _through_doors(scene: Scene) -> Iterator[Entry]:
+    for door in scene.project.doors:
+        share = open_share(door)
+        if np.any(share > 0.0):
+            yield _traffic(scene, door, share)
+        if np.any(door.gasket_leakage > 0.0):
+            yield _gasket(scene, door, share)
+
+
+def _traffic(scene: Scene, door: Door, share: FloatArray) -> Entry:
+    behind = _air_of(scene, door.neighbour)
+    flow = doorway.doorway_flow(door.width, door.height, scene.room.density, behind.density)
+    held_back = door.flow_factor * (1.0 - door.effectiveness)
+    exchanged = day(door.count * flow * share * held_back)
+    longest = np.maximum(door.open_each, over_hours(door.stood_open, door.hours).max(axis=-1) * SECONDS_AN_HOUR)
+    spent = np.any(np.max(flow, axis=-1) * np.max(longest) * held_back > scene.body.volume)
+    air = "outside air" if door.neighbour == "outdoors" else f"{door.neighbour} air"
+    formula = "V fully open x open share x flow factor x (1 - protection), times the difference of the airs"
+    return entry(
+        behind,
+        exchange(scene, behind, exchanged, denser_volume(scene, behind)),
+        name=f"doors.{door.name}.traffic",
+        label=f"{air}, {door.name} door",
+        how=("Gosney and Olama doorway flow", "gosney-olama-1975", formula),
+        inputs=(
+            Input(key="width_m", label="width", value=door.width, kind="length"),
+            Input(key="height_m", label="height", value=door.height, kind="length"),
+            Input(key="count", label="doors", value=door.count, kind="count"),
+            Input(key="open_flow_m3_per_s", label="V fully open, mean", value=steady_mean(day(flow)), kind="flow"),
+            Input(key="open_share", label="open share, mean", value=steady_mean(share), kind="share"),
+            Input(key="flow_factor", label="flow factor", value=door.flow_factor, kind="share"),
+            Input(key="protection", label="protection", value=door.effectiveness, kind="share"),
+        ),
+        remark=SPENT if spent else "",
+    )
+
+
+def _gasket(scene: Scene, door: Door, share: FloatArray) -> Entry:
+    behind = _air_of(scene, door.neighbour)
+    outline = 2.0 * (door.width + door.height)
+    flow = day(door.count * door.gasket_leakage * outline * (1.0 - share))
+    return entry(
+        behind,
+        exchange(scene, behind, flow, scene.room.specific_volume),
+        name=f"doors.{door.name}.gasket",
+        label=f"{door.name} door, gasket",
+        how=("gasket leakage", "as-given", "rate x outline x closed share, times the difference of the airs"),
+        inputs=(
+            Input(key="rate_m2_per_s", label="rate", value=door.gasket_leakage, kind="gasket_flow"),
+            Input(key="outline_m", label="outline", value=outline, kind="length"),
+            Input(key="closed_share", label="closed share, mean", value=steady_mean(day(1.0 - share)), kind="share"),
+        ),
+    )
+
+
+def leak_neighbour(scene: Scene) -> str:
+    """Where leaking air comes from: the richest air behind a door; without doors, behind any face."""
+    doors = [door.neighbour for door in scene.project.doors if door.neighbour in scene.airs]
+    faces = [face.neighbour for face in scene.project.faces.values() if face.neighbour in scene.airs]
+    names = doors or faces
+    if not names:
+        return ""
+    return max(dict.fromkeys(names), key=lambda name: float(np.mean(_air_of(scene, name).enthalpy)))
+
+
+def _closed_share(scene: Scene) -> FloatArray:
+    """Share of each hour in which every door is shut, doors opening apart from each other."""
+    closed = day(1.0)
+    for door in scene.project.doors:
+        closed = closed * (1.0 - open_share(door)) ** door.count
+    return closed
+
+
+def _leakage(scene: Scene) -> Iterator[Entry]:
+    rate = scene.project.box.leakage.per_second
+    name = leak_neighbour(scene)
+    if not (np.any(rate > 0.0) and name) or _gaskets_say_it(scene):
+        return
+    closed = _closed_share(scene)
+    yield _changes(
+        scene,
+        "leakage",
+        "leakage, all doors shut",
+        name,
+        day(rate * scene.body.volume * closed),
+        ("leakage rate", "as-given"),
+        (
+            Input(key="changes_per_h", label="air changes an hour", value=rate * SECONDS_AN_HOUR, kind="number"),
+            Input(key="volume_m3", label="volume", value=scene.body.volume, kind="volume"),
+            Input(key="closed_share", label="closed share, mean", value=steady_mean(closed), kind="share"),
+        ),
+    )
+
+
+def _gaskets_say_it(scene: Scene) -> bool:
+    """Whether leakage is told by the doors' gaskets: then a default rate for the whole box would count it twice."""
+    origin = scene.project.origins.get("box.leakage")
+    told = any(np.any(door.gasket_leakage > 0.0) for door in scene.project.doors)
+    return told and origin is not None and origin.kind == "default"
+
+
+def _by_rate(scene: Scene) -> Iterator[Entry]:
+    change = scene.project.box.air_change
+    name = leak_neighbour(scene)
+    if change is None or not name:
+        return
+    yield _changes(
+        scene,
+        "air_change",
+        "air change, as given",
+        name,
+        day(change.per_second * scene.body.volume),
+        ("air-change rate", "as-given"),
+        (
+            Input(key="changes_per_day", label="changes a day", value=change.per_second * SECONDS_A_DAY, kind="number"),
+            Input(key="volume_m3", label="volume", value=scene.body.volume, kind="volume"),
+        ),
+    )
+
+
+def table_changes_per_day(volume: Number, room_c: Number, use: str) -> Number:
+    """Average air changes in 24 h by room volume, openings and leakage together; straight on logarithmic axes.
+
+    volume: m³. room_c: °C; above and below 0 °C have columns of their own. use: light, average, heavy.
+    Raises OutOfValidity for a volume outside the table. Source: ASHRAE Handbook, Refrigeration, Refrigerated-facility
+    loads, average air changes per 24 hours (from memory).
+    """
+    table = list(rows("air_changes").values())
+    sizes = np.array([float(str(one["volume"])) for one in table])
+    if np.any(np.less(volume, sizes[0])) or np.any(np.greater(volume, sizes[-1])):
+        worst = float(np.min(volume)) if np.any(np.less(volume, sizes[0])) else float(np.max(volume))
+        raise OutOfValidity("the room's volume", worst, sizes[0], sizes[-1], "m³", "The table of air changes")
+    size = np.log(volume)
+    above, below = (
+        np.exp(np.interp(size, np.log(sizes), np.log([float(str(one[column])) for one in table])))
+        for column in ("above_zero", "below_zero")
+    )
+    return np.where(np.less(room_c, 0.0), below, above) * float(str(row("air_use", use)["factor"]))
+
+
+def _by_table(scene: Scene) -> Entry:
+    use = scene.project.box.use
+    per_day = table_changes_per_day(scene.body.volume, scene.room.temperature_c, use)
+    return _changes(
+        scene,
+        "air_change",
+        f"air changes by volume, {use} use",
+        leak_neighbour(scene),
+        day(per_day * scene.body.volume / SECONDS_A_DAY),
+        ("average air changes by volume", "ashrae-r-loads"),
+        (
+            Input(key="changes_per_day", label="changes a day", value=per_day, kind="number"),
+            Input(key="volume_m3", label="volume", value=scene.body.volume, kind="volume"),
+        ),
+    )
+
+
+def _changes(
+    scene: Scene,
+    name: str,
+    label: str,
+    neighbour: str,
+    flow: FloatArray,
+    how: tuple[str, str],
+    inputs: tuple[Input, ...],
+) -> Entry:
+    behind = _air_of(scene, neighbour)
+    method, source = how
+    return entry(
+        behind,
+        exchange(scene, behind, flow, scene.room.specific_volume),
+        name=name,
+        label=label,
+        how=(method, source, "changes x volume, times the difference of the airs"),
+        inputs=inputs,
+        remark=f"air from {neighbour}",
+    )
+
+
+def _ventilation(scene: Scene, fresh: Ventilation) -> Entry:
+    behind = _air_of(scene, fresh.neighbour)
+    if fresh.dried_to is not None:
+        dried = np.minimum(behind.humidity_ratio, moist_air.saturation_humidity_ratio(fresh.dried_to, scene.pressure))
+        behind = from_humidity_ratio(behind.temperature_c, dried, scene.pressure)
+    flow = day(fresh.flow * fresh.hours.shares() * (1.0 - fresh.recovery))
+    return entry(
+        behind,
+        exchange(scene, behind, flow, behind.specific_volume),
+        name=f"ventilation.{fresh.name}",
+        label=f"fresh air, {fresh.name}",
+        how=("ventilation", "ashrae-f-psychrometrics", "rho V (h_outside - h_room) x (1 - recovery)"),
+        inputs=(
+            Input(key="flow_m3_per_s", label="V", value=fresh.flow, kind="flow"),
+            Input(key="recovery", label="recovery", value=fresh.recovery, kind="share"),
+            Input(key="hours_per_day", label="hours a day", value=fresh.hours.hours_per_day(), kind="number"),
+        ),
+    )

@@ -1,0 +1,115 @@
+"""What works inside: people, lights, motors, trucks."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from coldbox.account.entry import Entry, Input
+from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, day
+from coldbox.physics.number import Number
+from coldbox.project.model import Light, Motor, People
+from coldbox.scene import Scene
+from coldbox.tables.load import row, rows
+
+EVAPORATION_J_PER_KG = 2.5e6  # heat of evaporation near 0 °C, moist-air tables
+
+
+def entries(scene: Scene) -> list[Entry]:
+    """Every entry of the group internal, in the order of the file."""
+    project = scene.project
+    return [
+        *(_people(scene, people) for people in project.people),
+        *(_lights(light) for light in project.lights),
+        *(_motor("motors", motor) for motor in project.motors),
+        *(_motor("trucks", truck) for truck in project.trucks),
+    ]
+
+
+def heat_of_a_person(room_c: Number) -> tuple[Number, Number, str]:
+    """Heat of one person at work in a cold room, its latent part, and the source's key.
+
+    q = a - b t, the handbook's line; the latent share falls with the temperature (table `people`).
+    room_c: °C, any shape. Returns W, W and text. Source: ASHRAE Handbook, Refrigeration, Refrigerated-facility loads.
+    """
+    line = row("people", "heat by room temperature")
+    total = float(str(line["at_zero_w"])) - float(str(line["fall_w_per_k"])) * room_c
+    table = [at for at in rows("people").values() if "latent_share" in at]
+    shares = sorted((float(str(at["at_c"])), float(str(at["latent_share"]))) for at in table)
+    latent = np.interp(room_c, [at for at, _ in shares], [share for _, share in shares])
+    return total, total * latent, str(line["source"])
+
+
+def _people(scene: Scene, people: People) -> Entry:
+    room = scene.room.temperature_c
+    each, latent_each, source = heat_of_a_person(room)
+    present = people.count * people.hours.shares()
+    hours_a_day = people.hours.hours_per_day()
+    return Entry(
+        id=f"people.{people.name}",
+        group="internal",
+        label=f"people, {people.name}",
+        sensible_w=day((each - latent_each) * present),
+        latent_w=day(latent_each * present),
+        moisture_kg_per_day=latent_each * people.count * hours_a_day / 24.0 * SECONDS_A_DAY / EVAPORATION_J_PER_KG,
+        method="heat of people by room temperature",
+        source=source,
+        formula="n (272 - 6 t_room) over their hours",
+        inputs=(
+            Input(key="count", label="n", value=people.count, kind="number"),
+            Input(key="each_w", label="272 - 6 t_room", value=each, kind="power"),
+            Input(key="room_c", label="t_room", value=room, kind="temperature"),
+            Input(key="hours_per_day", label="hours a day", value=hours_a_day, kind="number"),
+        ),
+    )
+
+
+def _lights(light: Light) -> Entry:
+    return Entry(
+        id=f"lights.{light.name}",
+        group="internal",
+        label=f"lights, {light.name}",
+        sensible_w=day(light.power * light.count * light.hours.shares()),
+        latent_w=NOTHING,
+        moisture_kg_per_day=0.0,
+        method="as given",
+        source="as-given",
+        formula="n P over their hours",
+        inputs=(
+            Input(key="power_w", label="P of one", value=light.power, kind="power"),
+            Input(key="count", label="n", value=light.count, kind="count"),
+            Input(key="hours_per_day", label="hours a day", value=light.hours.hours_per_day(), kind="number"),
+        ),
+    )
+
+
+def _motor(table: str, motor: Motor) -> Entry:
+    share, source = _share_inside(motor)
+    return Entry(
+        id=f"{table}.{motor.name}",
+        group="internal",
+        label=f"{motor.kind or 'motor'}, {motor.name}",
+        sensible_w=day(motor.power * share * motor.count * motor.hours.shares()),
+        latent_w=NOTHING,
+        moisture_kg_per_day=0.0,
+        method=f"motor, {motor.place}",
+        source=source,
+        formula="n P over their hours, times the share that stays inside",
+        inputs=(
+            Input(key="power_w", label="P drawn by one", value=motor.power, kind="power"),
+            Input(key="count", label="n", value=motor.count, kind="count"),
+            Input(key="share_inside", label="share inside", value=share, kind="share"),
+            Input(key="hours_per_day", label="hours a day", value=motor.hours.hours_per_day(), kind="number"),
+        ),
+    )
+
+
+def _share_inside(motor: Motor) -> tuple[Number, str]:
+    """Share of the power drawn that ends in the room: all, what the shaft carries in, or what the motor loses."""
+    if motor.place == "inside":
+        return 1.0, "as-given"
+    table = rows("motors")
+    sizes = sorted((float(str(size["up_to_w"])), float(str(size["efficiency"]))) for size in table.values())
+    drawn = [shaft / efficiency for shaft, efficiency in sizes]  # the table goes by power at the shaft
+    efficiency = np.interp(motor.power, drawn, [value for _, value in sizes])
+    source = str(next(iter(table.values()))["source"])
+    return (efficiency if motor.place == "load only" else 1.0 - efficiency), source

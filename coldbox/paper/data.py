@@ -1,0 +1,101 @@
+"""Results as plain data: the JSON of the contract, always SI, and series for a CSV."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+
+import numpy as np
+
+from coldbox.account.entry import Entry, Finding, Load
+from coldbox.physics.number import Number
+
+Json = None | bool | int | float | str | list["Json"] | dict[str, "Json"]
+
+
+def load_json(load: Load) -> dict[str, Json]:
+    """The load as the contract's JSON object; keys end in their unit. For a load without draws."""
+    return {
+        "name": load.project.name,
+        "required_capacity_w": _number(load.required_capacity_w),
+        "governs": load.governs,
+        "daily_heat_kwh": _number(load.daily_heat_j) / 3.6e6,
+        "counted_daily_heat_kwh": _number(load.counted_daily_j) / 3.6e6,
+        "run_hours": _number(load.run_hours),
+        "safety": _number(load.safety),
+        "by_daily_w": _number(load.by_daily_w),
+        "by_peak_w": _number(load.by_peak_w),
+        "by_atp_w": None if load.by_atp_w is None else _number(load.by_atp_w),
+        "peak": {"hour": load.peak_hour, "heat_w": _number(load.peak_w)},
+        "hours_w": _list(load.hours_w),
+        "entries": [_entry(entry, load.peak_hour) for entry in load.entries],
+        "credited_cold_w": _number(load.cold_w) if load.project.box.credit_cold else 0.0,
+        "uncredited_cold_w": 0.0 if load.project.box.credit_cold else _number(load.cold_w),
+        "frost_kg_per_day": _number(load.frost_kg_per_day),
+        "ua_w_per_k": _number(load.ua_w_per_k),
+        "k_w_per_m2k": _number(load.k_w_per_m2k),
+        "facts": {key: _number(value) for key, value in load.facts.items()},
+        "findings": [finding_json(finding) for finding in load.findings],
+    }
+
+
+def _entry(entry: Entry, peak_hour: int) -> dict[str, Json]:
+    hours = entry.hours_w
+    return {
+        "id": entry.id,
+        "group": entry.group,
+        "label": entry.label,
+        "peak_w": float(hours[peak_hour]),
+        "daily_kwh": float(hours.sum()) / 1000.0,
+        "sensible_w": float(entry.sensible_w[peak_hour]),
+        "latent_w": float(entry.latent_w[peak_hour]),
+        "moisture_kg_per_day": _number(entry.moisture_kg_per_day),
+        "method": entry.method,
+        "source": entry.source,
+        "formula": entry.formula,
+        "inputs": {item.key: _number(item.value) for item in entry.inputs},
+        "remark": entry.remark,
+        "hours_w": _list(hours),
+    }
+
+
+def finding_json(finding: Finding) -> dict[str, Json]:
+    """A finding as JSON: level, id, text, rule, path, standing."""
+    return {
+        "level": finding.level,
+        "id": finding.id,
+        "text": finding.text,
+        "rule": finding.rule,
+        "path": finding.path,
+        "standing": finding.standing,
+    }
+
+
+def _number(value: Number) -> float:
+    return float(value) if isinstance(value, (int, float)) else float(np.asarray(value).reshape(-1)[0])
+
+
+def _list(values: np.ndarray[tuple[int, ...], np.dtype[np.float64]]) -> list[Json]:
+    return [float(value) for value in values]
+
+
+def load_series(load: Load) -> Iterator[list[str]]:
+    """Rows of a CSV: a header, then an hour a row with every entry's watts."""
+    yield ["hour", *(cell(f"{entry.id}_w") for entry in load.entries), "all_w"]
+    for hour in range(24):
+        watts = [entry.hours_w[hour] for entry in load.entries]
+        yield [str(hour), *(repr(float(value)) for value in watts), repr(float(load.hours_w[hour]))]
+
+
+def csv_text(rows: Iterable[list[str]]) -> str:
+    """Rows as CSV text after RFC 4180."""
+    import csv
+    import io
+
+    page = io.StringIO(newline="")
+    csv.writer(page).writerows(rows)
+    return page.getvalue()
+
+
+def cell(text: str) -> str:
+    """A text cell that no spreadsheet takes for a formula."""
+    return f"'{text}" if text[:1] in ("=", "+", "-", "@", "\t", "\r") else text

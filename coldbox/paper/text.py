@@ -1,0 +1,74 @@
+"""A document as plain text, 80 columns wide unless told otherwise."""
+
+from __future__ import annotations
+
+import textwrap
+from collections.abc import Iterator
+
+from coldbox.paper.document import Bars, Block, Document, Heading, Paragraph, Table
+
+STEPS = "▁▂▃▄▅▆▇█"
+ASCII_STEPS = "_.-=+*%#"
+GAP = "  "
+
+
+def render(document: Document, *, width: int = 80, ascii_only: bool = False) -> str:
+    """The document as text, no line longer than `width` but for a single word that is."""
+    lines: list[str] = []
+    for block in document.blocks:
+        lines += _block(block, width, ascii_only)
+    return "\n".join(line.rstrip() for line in lines) + "\n"
+
+
+def _block(block: Block, width: int, ascii_only: bool) -> list[str]:
+    match block:
+        case Heading():
+            return ([] if block.level == 1 else [""]) + textwrap.wrap(block.text, width)
+        case Paragraph():
+            first = "  " * block.indent
+            return textwrap.wrap(
+                block.text, width, initial_indent=first, subsequent_indent=first + "  " * min(block.indent, 1)
+            )
+        case Table():
+            return _table(block, width)
+        case Bars():
+            return _bars(block, width, ascii_only)
+
+
+def _table(table: Table, width: int) -> list[str]:
+    rows = [tuple(column.title for column in table.columns), *table.rows]
+    if table.totals:
+        rows.append(table.totals)
+    widths = [max(len(row[index]) for row in rows) for index in range(len(table.columns))]
+    spare = width - 1 - sum(widths) - len(GAP) * (len(widths) - 1)
+    for index, column in enumerate(table.columns):
+        if column.gives and spare < 0:
+            widths[index] = max(widths[index] + spare, 12)
+    return list(_table_lines(table, rows, widths))
+
+
+def _table_lines(table: Table, rows: list[tuple[str, ...]], widths: list[int]) -> Iterator[str]:
+    for row in rows:
+        cells = [_cell_lines(cell, size) for cell, size in zip(row, widths, strict=True)]
+        for level in range(max(len(cell) for cell in cells)):
+            parts = []
+            for cell, size, column in zip(cells, widths, table.columns, strict=True):
+                text = cell[level] if level < len(cell) else ""
+                parts.append(text.rjust(size) if column.align == "right" else text.ljust(size))
+            yield " " + GAP.join(parts)
+
+
+def _cell_lines(cell: str, size: int) -> list[str]:
+    if len(cell) <= size:
+        return [cell]
+    return textwrap.wrap(cell, size, subsequent_indent=" ") or [""]
+
+
+def _bars(bars: Bars, width: int, ascii_only: bool) -> list[str]:
+    steps = ASCII_STEPS if ascii_only else STEPS
+    each = 2 if width >= 72 else 1
+    top = max(*bars.values, 1e-9)
+    marks = [steps[min(int(max(value, 0.0) / top * len(steps)), len(steps) - 1)] * each for value in bars.values]
+    scale = "".join(f"{hour:<{6 * each}}" for hour in (0, 6, 12, 18))
+    head = f" {bars.label} "
+    return [f"{head}{''.join(marks)}  {bars.lowest} to {bars.highest}", f"{' ' * len(head)}{scale}"]
