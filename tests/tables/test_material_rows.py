@@ -13,7 +13,8 @@ MATERIALS = load.rows("materials")
 def test_there_are_enough_of_them():
     assert len(MATERIALS) >= 60
     assert {row["kind"] for row in MATERIALS.values()} >= {
-        "foam", "insulation", "evacuated", "metal", "masonry", "wood", "plastic", "packaging", "glass", "ground", "other",
+        "foam", "insulation", "evacuated", "metal", "masonry", "wood",
+        "plastic", "packaging", "glass", "ground", "other",
     }  # fmt: skip
 
 
@@ -77,8 +78,10 @@ def test_hollow_blocks_as_one_layer(name, thickness, conductance):
     assert load.row("materials", name)["conductivity"] / thickness == pytest.approx(conductance, rel=0.01)
 
 
-@pytest.mark.parametrize(("name", "fluid", "at_c", "rel"), [("water", "Water", 10, 0.04), ("still air", "Air", 10, 0.02),
-                                                            ("argon", "Argon", 10, 0.04)])  # fmt: skip
+@pytest.mark.parametrize(
+    ("name", "fluid", "at_c", "rel"),
+    [("water", "Water", 10, 0.04), ("still air", "Air", 10, 0.02), ("argon", "Argon", 10, 0.04)],
+)
 def test_fluids_against_a_property_library(name, fluid, at_c, rel):
     row = MATERIALS[name]
     for column, letter in (("conductivity", "L"), ("density", "D"), ("specific_heat", "C")):
