@@ -10,7 +10,8 @@ import numpy as np
 from coldbox.errors import OutOfValidity
 from coldbox.physics.number import FloatArray, Number
 
-BEYOND_K: Final = 15.0  # how far the line through the outermost two points is followed
+ABOVE_K: Final = 15.0  # how far the line through the last two points is followed
+BELOW_K: Final = 30.0  # and that through the first two: towards less heat, until what lives freezes
 J_PER_MG: Final = 10.7  # heat per mg of carbon dioxide given off
 BECKER_FRICKE_LOW_C: Final = 0.0
 BECKER_FRICKE_HIGH_C: Final = 30.0
@@ -20,11 +21,11 @@ def heat(at_c: Sequence[Number] | FloatArray, w_per_kg: Sequence[Number] | Float
     """Heat of respiration between measured points, W/kg.
 
     ln w is a straight line in temperature between neighbouring points (so w grows by one factor per kelvin), and the
-    outermost two lines are followed 15 K beyond the points.
+    outermost two lines are followed beyond the points, 30 K down and 15 K up.
 
     at_c: two temperatures or more, rising, °C. w_per_kg: the heat at each, above 0, W/kg. Each is one number or an
     array that broadcasts with temperature_c, °C. Result: their common shape.
-    Valid from 15 K below the first to 15 K above the last point; raises OutOfValidity beyond, for points that do not
+    Valid from 30 K below the first to 15 K above the last point; raises OutOfValidity beyond, for points that do not
     rise, and for a heat not above 0.
     Source: exponential growth with temperature, the usual form between rates tabled in USDA Agriculture Handbook 66.
 
@@ -32,7 +33,7 @@ def heat(at_c: Sequence[Number] | FloatArray, w_per_kg: Sequence[Number] | Float
     0.02
     """
     _check(at_c, w_per_kg)
-    low, high = np.subtract(at_c[0], BEYOND_K), np.add(at_c[-1], BEYOND_K)
+    low, high = np.subtract(at_c[0], BELOW_K), np.add(at_c[-1], ABOVE_K)
     for outside in (np.less(temperature_c, low - 1e-9), np.greater(temperature_c, high + 1e-9)):
         if np.any(outside):
             worst = float(np.broadcast_to(temperature_c, outside.shape)[outside].flat[0])

@@ -160,15 +160,15 @@ class Goods(Record):
     def respiration_w_per_kg(self, temperature_c: Number) -> Number:
         """Heat of respiration, W/kg, at a temperature in °C; 0 for what does not live, and for what is frozen.
 
-        Raises OutOfValidity more than 15 K beyond the points.
+        Raises OutOfValidity far beyond the points, as `physics.respiration.heat` does.
         """
         if not self.lives:
             return np.zeros_like(temperature_c) if np.ndim(temperature_c) else 0.0
         if self.freezing_point_c is None:
             return respiration.heat(self.at_c, self.w_per_kg, temperature_c)
-        awake = np.maximum(temperature_c, self.freezing_point_c)
-        given_off = respiration.heat(self.at_c, self.w_per_kg, awake)
-        result = np.where(np.less(temperature_c, self.freezing_point_c), 0.0, given_off)
+        frozen = np.less(temperature_c, self.freezing_point_c)
+        awake = np.where(frozen, self.at_c[0], temperature_c)
+        result = np.where(frozen, 0.0, respiration.heat(self.at_c, self.w_per_kg, awake))
         return result if result.ndim else float(result)
 
     def ice_fraction(self, temperature_c: Number) -> Number:
