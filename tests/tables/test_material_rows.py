@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import CoolProp.CoolProp as coolprop
 import pytest
+from ht.insulation import ASHRAE, building_materials
 
 from coldbox.tables import load
 
@@ -94,3 +95,80 @@ def test_heat_capacity_of_soils_agrees_between_tables():
         row, ground = MATERIALS[material], load.row("soils", soil)
         assert row["conductivity"] == ground["conductivity"]
         assert row["density"] * row["specific_heat"] == pytest.approx(ground["heat_capacity"], rel=0.01)
+
+
+# Rows against the design values of EN 12524 (ISO 10456 took them over) as a heat-transfer library holds them.
+STANDARD = {
+    "steel sheet": "Metals, steel",
+    "aluminium": "Metals, aluminium alloys",
+    "copper": "Metals, copper",
+    "brass": "Metals, brass",
+    "cast iron": "Metals, iron, cast",
+    "lead": "Metals, lead",
+    "zinc": "Metals, zinc",
+    "concrete": "Concrete, medium density 2200 kg/m^3",
+    "dense concrete": "Concrete, high density",
+    "reinforced concrete": "Concrete, reinforced with 1% steel",
+    "light concrete": "Concrete, medium density 1800 kg/m^3",
+    "gypsum plaster": "Plasters and renders, gypsum plastering, 1300 kg/m^3",
+    "plasterboard": "Gypsum, plasterboard",
+    "ceramic tiles": "Tiles, ceramic or porcelain",
+    "granite": "Stone, granite",
+    "limestone": "Stone, limestone, hard",
+    "sandstone": "Stone, sandstone (silica)",
+    "asphalt": "Asphalt",
+    "bitumen felt": "Bitumen, felt or sheet",
+    "hardwood": "Timber, 700 kg/m^3",
+    "plywood": "Wood, plywood 500 kg/m^3",
+    "film-faced plywood": "Wood, plywood 700 kg/m^3",
+    "particle board": "Wood, particleboard, 600 kg/m^3",
+    "OSB": "Wood, oriented strand board",
+    "fibreboard": "Wood, fibreboard, 600 kg/m^3",
+    "polyethylene": "Plastics, polyethylene / polythene, high density",
+    "low-density polyethylene": "Plastics, polyethylene / polythene, low density",
+    "polypropylene": "Plastics, polypropylene",
+    "PVC": "Plastics, Polyvinylchloride (PVC)",
+    "soft PVC": "Sealant, polyvinylchloride (PVC) flexible, with 40% softner",
+    "polystyrene": "Plastics, polystyrene",
+    "acrylic": "Plastics, polymethylmethacrylate (PMMA)",
+    "polycarbonate": "Plastics, polycarbonates",
+    "polyamide": "Plastics, polyamide (nylon)",
+    "epoxy": "Plastics, epoxy resin",
+    "rubber": "Floor covering, rubber",
+    "EPDM": "Rubber, ethylene propylene diene monomer (EPDM)",
+    "linoleum": "Floor covering, Linoleum",
+    "glass": "Glass, soda lime",
+    "quartz glass": "Glass, quartz",
+    "ice": "Water, ice at 0 °C",
+    "snow": "Water, snow, slightly compacted (70 mm to 100 mm)",
+    "water": "Water at 10°C",
+    "still air": "Gases, air",
+    "argon": "Gases, argon",
+}
+
+
+@pytest.mark.parametrize("name", STANDARD)
+def test_design_values_of_the_standard(name):
+    row, there = MATERIALS[name], building_materials[STANDARD[name]]
+    assert (row["density"], row["conductivity"], row["specific_heat"]) == there
+
+
+# W/mK, within the share: the ASHRAE table of the same library, for what the European standard does not list.
+AMERICAN = {
+    "EPS foam": ("Expanded polystyrene, molded beads", 0.03),
+    "PIR foam": ("Polyisocyanurate, aged, unfaced", 0.03),
+    "sprayed PUR foam": ("Spray-applied Polyurethane foam, 40 kg/m^3", 0.08),
+    "glass wool": ("Glass fiber board", 0.01),
+    "mineral wool": ("Slag wool, 120 kg/m^3", 0.01),
+    "cellular glass": ("Cellular glass", 0.07),
+    "cement plaster": ("Cement plaster, sand aggregate", 0.01),
+    "expanded perlite": ("Loose fill, Perlite, expanded, 100 kg/m^3", 0.05),
+    "softwood": ("Hem/fir, spruce/pine/fir", 0.01),
+    "hardwood": ("Oak", 0.06),
+}
+
+
+@pytest.mark.parametrize("name", AMERICAN)
+def test_insulation_and_wood_of_the_handbook(name):
+    key, share = AMERICAN[name]
+    assert MATERIALS[name]["conductivity"] == pytest.approx(ASHRAE[key][2], rel=share)
