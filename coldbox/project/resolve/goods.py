@@ -219,6 +219,12 @@ def _limits(reader: Reader, found: Mapping[str, Any], product: Any) -> tuple[Lim
 
 def _known_enough(reader: Reader, lot: Lot, box: Box, in_table: bool) -> None:
     """Whether its heat can be computed: a composition with a freezing point, or the figures that count here."""
+    point = lot.freezing_point
+    if point is not None and point > 0 and lot.composition is not None and lot.composition.water > 0:
+        reader.problem(
+            "freezing_point",
+            f'Water in food freezes at 0 °C or below, never at {point:g} °C. Write it such as "-0.5 °C".',
+        )
     if in_table or reader.work.said_about(f"{reader.path}.composition") or reader.work.said(f"{reader.path}.product"):
         return
     if lot.composition is not None:
@@ -233,7 +239,6 @@ def _known_enough(reader: Reader, lot: Lot, box: Box, in_table: bool) -> None:
         return
     coldest = min(at for at in (box.temperature, lot.arrival_temperature, lot.start_temperature) if at is not None)
     warmest = max(at for at in (box.temperature, lot.arrival_temperature, lot.start_temperature) if at is not None)
-    point = lot.freezing_point
     if lot.specific_heat_above is not None and coldest >= (0.0 if point is None else point):
         return
     if (
