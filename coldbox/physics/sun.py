@@ -15,7 +15,7 @@ from coldbox.physics.validity import within
 from coldbox.record import Record
 
 _RAD = math.pi / 180.0
-_INSTANTS = 6  # an hour: the mean over an hour of a day is then within 1 W/m² of one taken each half minute
+_INSTANTS = 6  # an hour: its mean on a wall is then within 1.5 W/m² of that of 120 instants; of one instant, 40
 _SOLAR_CONSTANT = 1367.0  # W/m², as the clear-sky model of ASHRAE uses it
 _POSITION = "Sun position (Astronomical Almanac, low precision)"
 _CLEAR = "Clear sky (ASHRAE, tau_b and tau_d)"

@@ -195,12 +195,16 @@ def balance(
     steady. emissivity: ε long-wave; sky_share: F_sky; convection: h_c, W/(m²K); room_c: T_i, steady, °C; (…, 1).
     panel: of `response`, behind the outside surface, without an outside film. All broadcast: surfaces stacked on the
     first axis, draws before the hours. Result: BalancedSurface, (…, 24); the mean of inside_w_per_m2 is
-    u (mean T_s - T_i) exactly. Convection above 0, emissivity 0 to 1, else OutOfValidity; NoRoot after 60 rounds.
+    u (mean T_s - T_i) exactly. Convection above 0, emissivity 0 to 1, absorbed sun 0 to 10 kW/m², temperatures from
+    -150 to 150 °C, else OutOfValidity; NoRoot when 60 rounds do not reach the tolerance.
     Source: heat balance of a surface, Stefan-Boltzmann law; panel by ISO 13786.
     """
     within(emissivity, 0.0, 1.0, quantity="the emissivity", unit="", method="Surface balance")
     within(convection, 1e-3, math.inf, quantity="the convection", unit="W/(m²K)", method="Surface balance")
+    within(absorbed, 0.0, 1e4, quantity="the absorbed sun", unit="W/m²", method="Surface balance")
     around_c = air_c if ground_c is None else ground_c
+    for level in (air_c, sky_c, room_c, around_c):
+        within(level, -150.0, 150.0, quantity="a temperature", unit="°C", method="Surface balance")
     given: tuple[Number, ...] = (air_c, sky_c, absorbed, emissivity, sky_share, convection, room_c, around_c)
     shape = np.broadcast_shapes(*(np.shape(value) for value in given), (*panel.admittance.shape[:-1], 24))
     surface_c, inside = np.empty(shape), np.empty(shape)
