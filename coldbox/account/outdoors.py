@@ -41,6 +41,16 @@ class Outdoors(Record):
         """Whether any sun falls on the surface at this place of the stack."""
         return matters(self.peak_incident[place])
 
+    def day(self, stacked: FloatArray, place: int) -> FloatArray:
+        """One surface's figure of the day, (24,) or (draws, 24), from a stack of these."""
+        found: FloatArray = stacked[place]
+        return found[0] if found.shape[0] == 1 else found
+
+    def steady(self, stacked: FloatArray, place: int) -> Number:
+        """One surface's steady figure, float or (draws, 1), from a stack of these."""
+        found: FloatArray = stacked[place]
+        return float(found[0, 0]) if found.shape[0] == 1 else found
+
 
 def solve(scene: Scene, surfaces: Sequence[Surface]) -> Outdoors:
     """Heat through outdoor surfaces by the balance of each outside surface and periodic conduction behind it.

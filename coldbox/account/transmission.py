@@ -6,11 +6,12 @@ from collections.abc import Mapping
 
 import numpy as np
 
-from coldbox.account import allowance, floor, outdoors
+from coldbox.account import floor, outdoors, sun
 from coldbox.account.entry import Entry, Input
 from coldbox.account.floor import Floor
 from coldbox.account.outdoors import Outdoors
 from coldbox.account.shapes import day, steady_mean
+from coldbox.account.surfaces import SurfaceFact, surface_fact
 from coldbox.physics import periodic, shape
 from coldbox.physics.number import FloatArray, Number
 from coldbox.record import Record
@@ -18,19 +19,6 @@ from coldbox.scene import Scene
 from coldbox.scene import body as bodies
 from coldbox.scene.draws import matters, most
 from coldbox.scene.types import Surface
-
-
-class SurfaceFact(Record):
-    """The outside of a surface beside the air there: below the dew point it sweats. Figures float or (draws, 1)."""
-
-    id: str
-    label: str
-    behind: str
-    coldest_c: Number
-    warmest_c: Number
-    over_dew_point_k: Number  # least through the day of surface less dew point
-    dew_point_c: Number  # in the hour of that least
-    bridged: bool  # joints or bolts go through it, colder than this
 
 
 class Envelope(Record):
@@ -46,27 +34,19 @@ class Envelope(Record):
 def envelope(scene: Scene) -> Envelope:
     """Entries of the groups transmission and sun, UA and K, and facts, all from one solution.
 
-    UA from air to air with the films of ISO 6946, joints and allowance, floors by ISO 13370; K = UA / √(A_i A_e).
-    facts: "underfloor_heater_w", "under_floor_centre_c" (heater off), "under_floor_c" (mean, heater on), "bearing_deg"
-    where it was not given, as far as the box has them.
-    Raises OutOfValidity where a method does not hold.
+    facts: those of `facts`. Raises OutOfValidity where a method does not hold.
     """
-    surfaces = scene.body.surfaces
-    floors = {one.id: floor.floor(scene, one) for one in surfaces if floor.belongs(scene, one)}
+    surfaces, floors = scene.body.surfaces, _floors(scene)
     open_air = [one for one in surfaces if one.behind == "outdoors" and one.id not in floors]
     hourly = scene.project.box.sun == "hourly"
     solved = outdoors.solve(scene, open_air) if open_air and hourly else None
     places = {one.id: place for place, one in enumerate(open_air)}
     around = _outdoor_and_room(scene) if open_air else ()
     entries: list[Entry] = []
-    ua: Number = 0.0
     for one in surfaces:
         if one.id in floors:
             entries.append(_floor(one, floors[one.id], scene))
-            ua = ua + floors[one.id].ua
-            continue
-        ua = ua + bodies.conductance(one) + one.extra_w_per_k
-        if solved is not None and one.id in places:
+        elif solved is not None and one.id in places:
             entries += _outdoor(scene, solved, places[one.id], around)
         elif one.id in places:
             entries += _allowed(scene, one)
@@ -74,18 +54,49 @@ def envelope(scene: Scene) -> Envelope:
             entries.append(_road(scene, one))
         else:
             entries.append(_steady(scene, one))
+    ua = _ua(scene, floors)
     return Envelope(
         entries=tuple(entries),
         ua_w_per_k=ua,
         k_w_per_m2k=shape.k_value(ua, scene.body.inside_area, scene.body.outside_area),
         facts=_facts(scene, floors),
-        surfaces=tuple(_fact(scene, one, solved, places) for one in surfaces if one.behind != "ground"),
+        surfaces=tuple(surface_fact(scene, one, solved, places) for one in surfaces if one.behind != "ground"),
     )
 
 
 def entries(scene: Scene) -> list[Entry]:
     """The entries of `envelope`, for who wants nothing else."""
     return list(envelope(scene).entries)
+
+
+def conductance(scene: Scene) -> tuple[Number, Number]:
+    """UA of the box, W/K, and its K coefficient, W/(m²K).
+
+    UA from air to air with the films of ISO 6946, joints and allowance, floors by ISO 13370; K = UA / √(A_i A_e).
+    """
+    ua = _ua(scene, _floors(scene))
+    return ua, shape.k_value(ua, scene.body.inside_area, scene.body.outside_area)
+
+
+def facts(scene: Scene) -> dict[str, Number]:
+    """Further results, as far as the box has them.
+
+    "under_floor_c": beneath the floor's insulation, mean over floor and day, with its heater. "under_floor_centre_c":
+    at the centre of a slab on the ground once the ground has settled, heater off. "underfloor_heater_w": mean of the
+    day. "bearing_deg": of the front, where the project leaves it open.
+    """
+    return _facts(scene, _floors(scene))
+
+
+def _floors(scene: Scene) -> dict[str, Floor]:
+    return {one.id: floor.floor(scene, one) for one in scene.body.surfaces if floor.belongs(scene, one)}
+
+
+def _ua(scene: Scene, floors: Mapping[str, Floor]) -> Number:
+    ua: Number = 0.0
+    for one in scene.body.surfaces:
+        ua = ua + (floors[one.id].ua if one.id in floors else bodies.conductance(one) + one.extra_w_per_k)
+    return ua
 
 
 def _facts(scene: Scene, floors: Mapping[str, Floor]) -> dict[str, Number]:
@@ -109,7 +120,7 @@ def _outdoor(scene: Scene, solved: Outdoors, place: int, around: tuple[Input, ..
     made = [
         _entry(
             one,
-            row(solved.plain_w, place),
+            solved.day(solved.plain_w, place),
             method="outside surface balance and periodic conduction (ISO 13786)",
             source="iso-13786",
             formula="(t_surface - t_room) A / (R + R_si) in the day's mean, delayed and damped by its layers",
@@ -119,69 +130,15 @@ def _outdoor(scene: Scene, solved: Outdoors, place: int, around: tuple[Input, ..
                 Input(
                     key="surface_mean_c",
                     label="t_surface, mean without sun",
-                    value=steady(solved.mean_surface_c, place),
+                    value=solved.steady(solved.mean_surface_c, place),
                     kind="temperature",
                 ),
             ),
         )
     ]
     if solved.sunlit(place):
-        made.append(_sun(scene, solved, place))
+        made.append(sun.entry(scene, solved, place))
     return made
-
-
-def _sun(scene: Scene, solved: Outdoors, place: int) -> Entry:
-    one = solved.surfaces[place]
-    weather = scene.weather
-    overcast = weather is not None and weather.sun is not None and weather.sun.overcast
-    glass = matters(one.solar_gain)
-    sky = "overcast sky" if overcast else "clear sky with tau_b and tau_d (ASHRAE)"
-    peak = Input(
-        key="peak_irradiance_w_per_m2",
-        label="I, brightest hour",
-        value=steady(solved.peak_incident, place),
-        kind="irradiance",
-    )
-    shade = Input(key="shade", label="shade", value=one.shade, kind="share")
-    if glass:
-        inputs: tuple[Input, ...] = (
-            Input(key="area_m2", label="A", value=one.area, kind="area"),
-            Input(key="solar_gain", label="g", value=one.solar_gain, kind="share"),
-            shade,
-            peak,
-        )
-    else:
-        inputs = (
-            Input(key="area_m2", label="A outside", value=one.outside_area, kind="area"),
-            Input(key="absorptance", label="α", value=one.absorptance, kind="share"),
-            shade,
-            peak,
-            Input(
-                key="peak_surface_c",
-                label="t_surface, warmest hour",
-                value=steady(solved.peak_surface_c, place),
-                kind="temperature",
-            ),
-            Input(
-                key="peak_sol_air_c",
-                label="sol-air temperature then",
-                value=steady(solved.peak_sol_air_c, place),
-                kind="temperature",
-            ),
-        )
-    return Entry(
-        id=f"sun.{one.id}",
-        group="sun",
-        label=f"sun through {one.label}" if glass else f"sun on {one.label}",
-        sensible_w=row(solved.sun_w, place),
-        latent_w=_nothing(row(solved.sun_w, place)),
-        moisture_kg_per_day=0.0,
-        method=sky,
-        source="kasten-czeplak-1980" if overcast else "ashrae-f-clear-sky",
-        formula="g (1 - shade) I A" if glass else "heat with α (1 - shade) I on the surface, less heat without",
-        inputs=inputs,
-        remark=_facing(scene, one),
-    )
 
 
 def _allowed(scene: Scene, one: Surface) -> list[Entry]:
@@ -199,28 +156,8 @@ def _allowed(scene: Scene, one: Surface) -> list[Entry]:
             more=_outdoor_and_room(scene),
         )
     ]
-    added = allowance.added_degrees(scene, one)
-    if matters(added):
-        heat = day(through * added)
-        made.append(
-            Entry(
-                id=f"sun.{one.id}",
-                group="sun",
-                label=f"sun on {one.label}",
-                sensible_w=heat,
-                latent_w=_nothing(heat),
-                moisture_kg_per_day=0.0,
-                method="added degrees for sun (ASHRAE)",
-                source="ashrae-r-loads",
-                formula="UA Δt_sun, all day",
-                inputs=(
-                    Input(key="ua_w_per_k", label="UA", value=through, kind="point_transmittance"),
-                    Input(key="added_k", label="Δt_sun", value=added, kind="difference"),
-                ),
-                remark=_facing(scene, one),
-            )
-        )
-    return made
+    sun_part = sun.allowed(scene, one)
+    return made if sun_part is None else [*made, sun_part]
 
 
 def _road(scene: Scene, one: Surface) -> Entry:
@@ -302,7 +239,7 @@ def _entry(
         group="transmission",
         label=one.label,
         sensible_w=heat,
-        latent_w=_nothing(heat),
+        latent_w=np.zeros(heat.shape),
         moisture_kg_per_day=0.0,
         method=method,
         source=source,
@@ -310,46 +247,6 @@ def _entry(
         inputs=(*inputs, *more),
         remark=remark,
     )
-
-
-def _fact(scene: Scene, one: Surface, solved: Outdoors | None, places: Mapping[str, int]) -> SurfaceFact:
-    made = one.construction
-    bridged = made is not None and (matters(made.edge_loss) or (made.points > 0 and matters(made.point_loss)))
-    place = places.get(one.id)
-    if solved is not None and place is not None:
-        return SurfaceFact(
-            id=one.id,
-            label=one.label,
-            behind=one.behind,
-            coldest_c=steady(solved.coldest_c, place),
-            warmest_c=steady(solved.peak_surface_c, place),
-            over_dew_point_k=steady(solved.over_dew_point_k, place),
-            dew_point_c=steady(solved.dew_point_c, place),
-            bridged=bridged,
-        )
-    # Steady: the surface lies below the air by what the film takes of the whole difference.
-    air = scene.airs[one.behind]
-    film = bodies.conductance(one) * one.outside_film / one.outside_area
-    surface_c = day(air.temperature_c - film * (air.temperature_c - scene.room.temperature_c))
-    over = surface_c - air.dew_point_c
-    nearest = int(over.reshape(-1, 24).mean(axis=0).argmin())
-    return SurfaceFact(
-        id=one.id,
-        label=one.label,
-        behind=one.behind,
-        coldest_c=_ends(surface_c.min(axis=-1, keepdims=True)),
-        warmest_c=_ends(surface_c.max(axis=-1, keepdims=True)),
-        over_dew_point_k=_ends(over.min(axis=-1, keepdims=True)),
-        dew_point_c=_ends(day(air.dew_point_c)[..., nearest : nearest + 1]),
-        bridged=bridged,
-    )
-
-
-def _facing(scene: Scene, one: Surface) -> str:
-    if scene.project.box.bearing is not None or one.azimuth is None:
-        return ""
-    front = (one.azimuth - bodies.TURN[one.face]) % 360.0
-    return f"no bearing given: the front faces {bodies.compass(front)}, the worst of 16"
 
 
 def _of_k(one: Surface) -> str:
@@ -363,23 +260,3 @@ def _outdoor_and_room(scene: Scene) -> tuple[Input, ...]:
 
 def _room(scene: Scene) -> Input:
     return Input(key="room_c", label="t_room", value=scene.room.temperature_c, kind="temperature")
-
-
-def _nothing(heat: FloatArray) -> FloatArray:
-    return np.zeros(heat.shape)
-
-
-def row(stacked: FloatArray, place: int) -> FloatArray:
-    """One thing of a stack as a figure of the day, (24,) or (draws, 24)."""
-    found: FloatArray = stacked[place]
-    return found[0] if found.shape[0] == 1 else found
-
-
-def steady(stacked: FloatArray, place: int) -> Number:
-    """One thing of a stack as a steady figure, float or (draws, 1)."""
-    found: FloatArray = stacked[place]
-    return float(found[0, 0]) if found.shape[0] == 1 else found
-
-
-def _ends(figure: FloatArray) -> Number:
-    return float(figure[0]) if figure.ndim == 1 else figure
