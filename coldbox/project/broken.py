@@ -46,7 +46,8 @@ def load(text: str, file: str) -> tuple[dict[str, object], str, list[Problem]]:
     problems: list[Problem] = []
     try:
         return tomllib.loads(text), text, problems
-    except tomllib.TOMLDecodeError:
+    except tomllib.TOMLDecodeError as first:
+        error = first
         mended = _quoted(text, file, problems)
         if mended is not None:
             try:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Mapping
 
 from coldbox.errors import UnitProblem
@@ -26,7 +25,7 @@ def defaults_used(project: Project, *, for_load: bool = False) -> list[tuple[str
     for path, origin in project.origins.items():
         if origin.kind != "default" or (for_load and _later(path)):
             continue
-        merged.setdefault((_pattern(path), origin.text, origin.reason), []).append(path)
+        merged.setdefault((_place(path)[0], origin.text, origin.reason), []).append(path)
     return [
         (paths[0] if len(paths) == 1 else pattern, _shown(paths[0], text, project.units), reason)
         for (pattern, text, reason), paths in merged.items()
@@ -37,28 +36,26 @@ def _later(path: str) -> bool:
     return path.startswith(_LATER) or path.rpartition(".")[2] in _LATER_KEYS
 
 
-def _pattern(path: str) -> str:
-    """The key path with `*` for the names in it."""
+def _place(path: str) -> tuple[str, str]:
+    """The key path with `*` for the names and numbers in it, and the table whose declarations hold for its key."""
     head, _, key = path.rpartition(".")
-    if not head or head in fields.BY_KEY and key in fields.BY_KEY[head]:
-        return path
-    top, dot, rest = head.partition(".")
-    if not dot:
-        return f"{top.partition('[')[0]}.*.{key}"
-    inner = re.search(r"\.(layers|limits|respiration|composition|events|legs|stops|deliver|construction)\b", "." + rest)
-    return f"{top}.*.{key}" if inner is None else f"{top}.*{inner.group(0)}.*.{key}"
+    pattern, table = "", ""
+    for step in head.split(".") if head else ():
+        word, bracket, _ = step.partition("[")
+        below = "constructions" if word == "construction" else f"{table}.{word}" if table else word
+        if below in fields.BY_KEY:
+            pattern, table = f"{pattern}.{word}" if pattern else word, below
+            star = bool(bracket)
+        else:
+            star = not pattern.endswith("*")  # a name; or more of one that holds a point
+        pattern += ".*" if star else ""
+    return f"{pattern}.{key}" if pattern else key, table
 
 
 def declaration(path: str) -> fields.Field | None:
     """The declaration of a key path such as "doors.main.width" or "constructions.pir100.layers[2].ageing"."""
-    parts = _pattern(path).split(".")
-    table = ".".join(part for part in parts[:-1] if part != "*")
-    if "construction" in parts[1:-1]:  # one that stands inline at its owner
-        table = "constructions.layers" if "layers" in parts else "constructions"
-    elif ".construction." in path:
-        table = "constructions.layers" if ".layers[" in path else "constructions"
-    found: Mapping[str, fields.Field] = fields.BY_KEY.get(table, {})
-    return found.get(parts[-1])
+    found: Mapping[str, fields.Field] = fields.BY_KEY.get(_place(path)[1], {})
+    return found.get(path.rpartition(".")[2])
 
 
 def _shown(path: str, text: str, system: str) -> str:

@@ -11,7 +11,7 @@ from coldbox.project.model import Box, Composition, Limit, Lot, Pack, Respiratio
 from coldbox.project.raw import Block
 from coldbox.project.resolve.body import limits, listed
 from coldbox.project.resolve.reader import Reader, Work, hint
-from coldbox.project.resolve.rows import NOTHING, row
+from coldbox.project.resolve.rows import NOTHING, row, row_or_problem
 from coldbox.tables import load
 from coldbox.units.clock import Rate
 
@@ -23,9 +23,12 @@ USUAL_CHILLING = 0.7  # the middle of what the handbook prints, 0.56 to 0.8 by p
 def lot(work: Work, block: Block, name: str, box: Box) -> Lot:
     """One lot, complete."""
     reader = Reader(work, "lots", block.path, block)
+    copied = any(key in block.values for key in ("product", *QUOTED)) or "composition" in block.children
+    reader.on_library("goods", copied)
     product = reader.given("product")
-    reader.on_library("goods", any(key in block.values for key in QUOTED) or "composition" in block.children)
-    found = _product(reader, product) if isinstance(product, str) else NOTHING
+    found: Mapping[str, Any] = NOTHING
+    if isinstance(product, str):
+        product, found = _product(reader, product)
     composition = _composition(reader, found, product)
     freezing_point = _from(reader, found, "freezing_point", "freezing_point_c", "{:g} °C", product)
     stored, arrives = _amounts(reader)
@@ -62,14 +65,14 @@ def lot(work: Work, block: Block, name: str, box: Box) -> Lot:
     return made
 
 
-def _product(reader: Reader, product: str) -> Mapping[str, Any]:
-    """The row of the product; goods of the shop library are found by their name too. A product that stands with its
-    own composition or figures is only a name."""
+def _product(reader: Reader, product: str) -> tuple[str, Mapping[str, Any]]:
+    """The product and its row in the table. Goods of the shop library are found by their name too, and may name a
+    product in turn; one that stands with its own composition or figures is only a name."""
     try:
-        return row("foods", product)
+        return product, row("foods", product)
     except UnknownName:
         if reader.children("composition", "lots.composition") or any(reader.has(key) for key in QUOTED):
-            return NOTHING
+            return product, NOTHING
         library = reader.work.library
         try:
             block = library.row("goods", product)
@@ -80,9 +83,15 @@ def _product(reader: Reader, product: str) -> Mapping[str, Any]:
                 f'"{product}" is neither among the foods nor in the shop library.{hint(product, names)}'
                 " Or give its composition, or its specific heats.",
             )
-            return {"missing": True}
+            return product, {"missing": True}
         reader.on(block, library.said("goods", block))
-        return NOTHING
+        named = block.values.get("product")
+        return (product, NOTHING) if named is None else _of_library(reader, str(named.value))
+
+
+def _of_library(reader: Reader, product: str) -> tuple[str, Mapping[str, Any]]:
+    """The row of a product that a row of the library names."""
+    return product, row_or_problem(reader, "product", "foods", product, "The shop library names it.")
 
 
 def _from(reader: Reader, found: Mapping[str, Any], key: str, column: str, form: str, product: Any) -> Any:
@@ -258,7 +267,7 @@ def _known_enough(reader: Reader, lot: Lot, box: Box, in_table: bool) -> None:
 def pack(work: Work, block: Block, name: str, box: Box) -> Pack:
     """One pack, complete."""
     reader = Reader(work, "packs", block.path, block)
-    reader.on_library("packs", "latent_heat" in block.values)
+    reader.on_library("packs", "kind" in block.values)
     kind = reader.given("kind") or ""
     if not kind:
         reader.missing("kind", "Write ice, eutectic, dry ice or own.")

@@ -173,9 +173,9 @@ class Reader:
         return math.nan
 
     def missing(self, key: str, advice: str) -> None:
-        """A problem that this key is not there, unless it is known already (typed, but wrong)."""
+        """A problem that this key is not there, unless it is known why: typed wrongly, or no library row."""
         path = self.at(key)
-        if not self.work.said(path):
+        if not self.work.said(path) and not self.work.said(self.at("library")):
             self.work.problem(f"{key} is missing. {advice}", path, self.line)
 
     def problem(self, key: str, text: str) -> None:

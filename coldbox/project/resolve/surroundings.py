@@ -129,8 +129,8 @@ class _Place:
         self.row: Mapping[str, Any] = {}
         self.row_source = ""
         self.nearest: tuple[str, float] | None = None
+        self.reader.on_library("places", "dry_bulb" in block.values or "place" in block.values)
         name = self.reader.given("place")
-        self.reader.on_library("places", "latitude" in block.values)
         self.takes = self.reader.value if outdoors else self.reader.quiet
         self.name = name if isinstance(name, str) else None
         if self.name is not None:
