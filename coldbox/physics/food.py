@@ -149,7 +149,7 @@ def temperature(
 
     Below freezing Chen's equation times t is a quadratic in t, of which one root is negative.
 
-    enthalpy_j_per_kg: J/kg from -40 °C. The rest as for `enthalpy`.
+    enthalpy_j_per_kg: J/kg from -40 °C. water, protein, freezing_point_c, specific_heat_above: as for `enthalpy`.
     Valid where the temperature found lies from -45 to 100 °C; raises OutOfValidity beyond.
     Source: Chen (1985).
     """
@@ -173,7 +173,9 @@ def apparent_heat_capacity(
 
     t ≤ t_f: c = 1.55 + 1.26 x_s - (x_w - x_b) L0 t_f / t² kJ/kgK;  t > t_f: c_u
 
-    Arguments, validity, errors and source as for `enthalpy`, whose exact derivative it is.
+    temperature_c: t, °C. water, protein, freezing_point_c, specific_heat_above: as for `enthalpy`, whose exact derivative
+    this is; validity and errors too.
+    Source: Chen (1985).
     """
     freezable = _freezable(water, protein, freezing_point_c)
     _within(temperature_c, LOW_C, HIGH_C, _CHEN)
@@ -244,7 +246,8 @@ def quoted_heat_capacity(
 
     c_a above t_f; c_b + L / 0.1 K within 0.1 K below it; c_b further down.
 
-    Arguments, validity, errors and source as for `quoted_enthalpy`, whose exact derivative it is.
+    Its exact derivative, so arguments, validity and errors are as for `quoted_enthalpy`.
+    Source: as for `quoted_enthalpy`.
     """
     _within(temperature_c, QUOTED_LOW_C, HIGH_C, _QUOTED)
     past = np.subtract(temperature_c, freezing_point_c)
