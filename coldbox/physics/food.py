@@ -173,8 +173,8 @@ def apparent_heat_capacity(
 
     t ≤ t_f: c = 1.55 + 1.26 x_s - (x_w - x_b) L0 t_f / t² kJ/kgK;  t > t_f: c_u
 
-    temperature_c: t, °C. water, protein, freezing_point_c, specific_heat_above: as for `enthalpy`, whose exact derivative
-    this is; validity and errors too.
+    temperature_c: t, °C. water, protein, freezing_point_c, specific_heat_above: as for `enthalpy`, whose exact
+    derivative this is; validity and errors too.
     Source: Chen (1985).
     """
     freezable = _freezable(water, protein, freezing_point_c)
