@@ -2,23 +2,23 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator
 
 import numpy as np
 
 from coldbox.account import cautions, envelope_findings, goods_findings
 from coldbox.account.capacity import Capacity
 from coldbox.account.entry import Entry, Finding
-from coldbox.physics.number import Number
+from coldbox.account.transmission import Envelope
 from coldbox.scene import Scene
 
 ORDER = {"danger": 0, "caution": 1, "note": 2}
 
 
-def findings(scene: Scene, entries: list[Entry], sized: Capacity, facts: Mapping[str, Number]) -> tuple[Finding, ...]:
+def findings(scene: Scene, envelope: Envelope, entries: list[Entry], sized: Capacity) -> tuple[Finding, ...]:
     """Every finding that needs no timeline, in order of danger, this box's own before the standing ones."""
     found = [
-        *envelope_findings.findings(scene, facts),
+        *envelope_findings.findings(scene, envelope),
         *goods_findings.findings(scene),
         *_sizing(scene, entries, sized),
         *cautions.standing(scene),

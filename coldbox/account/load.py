@@ -19,11 +19,10 @@ def load(project: Project) -> Load:
     nothing, OutOfValidity where a method does not hold for this box.
     """
     scene = build(project)
-    entries = account(scene)
-    ua, k_value = transmission.conductance(scene)
-    sized = capacity(project, entries, ua)
+    envelope = transmission.envelope(scene)
+    entries = _account(scene, envelope)
+    sized = capacity(project, entries, envelope.ua_w_per_k)
     frost_kg = frost.frost_kg_per_day(scene, entries)
-    facts = {**transmission.facts(scene), **frost.facts(scene, frost_kg)}
     hours_w = np.sum([np.broadcast_to(entry.hours_w, _shape(entries)) for entry in entries], axis=0)
     return Load(
         project=project,
@@ -42,17 +41,17 @@ def load(project: Project) -> Load:
         required_capacity_w=sized.required_w,
         governs=sized.governs,
         frost_kg_per_day=frost_kg,
-        ua_w_per_k=ua,
-        k_w_per_m2k=k_value,
-        facts=facts,
-        findings=findings.findings(scene, entries, sized, facts),
+        ua_w_per_k=envelope.ua_w_per_k,
+        k_w_per_m2k=envelope.k_w_per_m2k,
+        facts={**envelope.facts, **frost.facts(scene, frost_kg)},
+        findings=findings.findings(scene, envelope, entries, sized),
     )
 
 
-def account(scene: Scene) -> list[Entry]:
+def _account(scene: Scene, envelope: transmission.Envelope) -> list[Entry]:
     """All entries of the day, quoted figures in their places."""
     others = [
-        *transmission.entries(scene),
+        *envelope.entries,
         *infiltration.entries(scene),
         *product.entries(scene),
         *internal.entries(scene),
