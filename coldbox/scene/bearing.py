@@ -4,9 +4,11 @@ from __future__ import annotations
 
 import numpy as np
 
-from coldbox.physics import sun
+from coldbox.physics import periodic, sun
 from coldbox.physics.number import FloatArray, Number
-from coldbox.scene.body import TURN, conductance
+from coldbox.physics.periodic import ComplexArray
+from coldbox.record import Record
+from coldbox.scene.body import TURN
 from coldbox.scene.types import Body, Surface, Weather
 
 POINTS = 16
@@ -16,23 +18,26 @@ _STEP = 360.0 / POINTS
 def worst_bearing(body: Body, weather: Weather) -> float | None:
     """The bearing of the front, degrees clockwise from north, at which the sun's heat has the highest peak hour.
 
-    For each point: max over the hours of the sum over all sunlit surfaces of
-    α (1 - shade) R_se UA I (what a wall passes on at once) or g (1 - shade) A I (glass).
+    For each point: max over the hours of the sum over all sunlit surfaces of g (1 - shade) A I through glass, and
+    through walls of A F⁻¹[H / (h + Y) · F(α (1 - shade) I)], with the film h of ISO 6946 and the panel's transfer H and
+    admittance Y.
     Draws are taken at their mean, so that all share one bearing. None where no wall stands in the sun.
     """
     walls = [one for one in body.surfaces if one.behind == "outdoors" and one.face in TURN]
     if not walls or weather.sun is None:
         return None
     directions = _STEP * np.arange(float(POINTS))
-    total = _falls_on(weather, directions[:, None], 90.0)
-    heat = np.zeros((POINTS, 24))
+    total = periodic.to_harmonics(_falls_on(weather, directions[:, None], 90.0))
+    heat = np.zeros((POINTS, 13), complex)
+    known: dict[int, ComplexArray] = {}
     for one in walls:
         turn = round(TURN[one.face] / _STEP)
-        heat += _share(one) * total[(np.arange(POINTS) + turn) % POINTS]
-    roofs = sum(_share(one) for one in body.surfaces if one.behind == "outdoors" and one.face == "ceiling")
+        heat += _passes(one, known) * total[(np.arange(POINTS) + turn) % POINTS]
+    roofs = [one for one in body.surfaces if one.behind == "outdoors" and one.face == "ceiling"]
     if roofs:
-        heat += roofs * _falls_on(weather, 0.0, 0.0)
-    return float(directions[int(np.argmax(heat.max(axis=-1)))])
+        falls = periodic.to_harmonics(_falls_on(weather, 0.0, 0.0))
+        heat += sum(_passes(one, known) for one in roofs) * falls
+    return float(directions[int(np.argmax(periodic.to_hours(heat).max(axis=-1)))])
 
 
 def _falls_on(weather: Weather, azimuth: Number, tilt: float) -> FloatArray:
@@ -45,14 +50,35 @@ def _falls_on(weather: Weather, azimuth: Number, tilt: float) -> FloatArray:
     )
     # Directions have no mean across north: those of the first draw stand for all.
     sun_azimuth = day.azimuth.reshape(-1, day.azimuth.shape[-1])[0]
-    reflects = float(np.mean(weather.ground_reflects))
+    reflects = _middle(weather.ground_reflects)
     return sun.day_on_surface(
         beam, diffuse, altitude, sun_azimuth, azimuth, tilt, reflects, overcast=day.overcast
     ).total
 
 
-def _share(one: Surface) -> float:
-    """Watts into the box for each W/m² that falls on the surface, with what passes on at once."""
-    glass = one.solar_gain * one.area
-    wall = one.absorptance * one.outside_film * conductance(one)
-    return float(np.mean((1.0 - one.shade) * np.where(np.asarray(one.solar_gain) > 0.0, glass, wall)))
+def _passes(one: Surface, known: dict[int, ComplexArray]) -> ComplexArray:
+    """Watts into the box for each W/m² that falls on the surface, at the 13 harmonics of the day.
+
+    known: what was found for the same layers, taken again: their inside films hardly differ.
+    """
+    sunny = 1.0 - _middle(one.shade)
+    gain = _middle(one.solar_gain)
+    if gain > 0.0:
+        return np.full(13, complex(gain * sunny * _middle(one.area)))
+    if id(one.sheets) not in known:
+        layers = [
+            _Layer(resistance=_middle(each.resistance), heat_capacity=_middle(each.heat_capacity))
+            for each in one.sheets
+        ]
+        panel = periodic.response(layers, _middle(one.inside_film))
+        known[id(one.sheets)] = panel.transfer / (1.0 / _middle(one.outside_film) + panel.admittance)
+    return one.absorptance * sunny * _middle(one.effective_area) * known[id(one.sheets)]
+
+
+class _Layer(Record):
+    resistance: float
+    heat_capacity: float
+
+
+def _middle(figure: Number) -> float:
+    return figure if isinstance(figure, float) else float(np.mean(figure))
