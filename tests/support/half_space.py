@@ -39,6 +39,7 @@ def solve(halves, floor_resistance, *, conductivity=1.0, wall=0.0, outside_film=
           growth=1.2, storage=0.0):  # fmt: skip
     """A floor at 1 and outdoors at 0; or, with `storage` (iω·ρc), the floor at 0 and a wave of 1 outdoors.
 
+    The floor's resistance is one number, or in two dimensions a function of the distance from the middle.
     Gives the ground's surface temperature at the centre, the flow through the floor there, and its mean over the floor.
     """
     edges = [across(half, wall, fine, far, growth) for half in halves] + [down(fine, far, growth)]
@@ -62,6 +63,8 @@ def solve(halves, floor_resistance, *, conductivity=1.0, wall=0.0, outside_film=
     places = np.meshgrid(*[np.cumsum(width) - width / 2 for width in widths[:-1]], indexing="ij")
     floor = np.logical_and.reduce([place < half for place, half in zip(places, halves, strict=True)])
     outdoors = np.logical_or.reduce([place > half + wall for place, half in zip(places, halves, strict=True)])
+    if callable(floor_resistance):
+        floor_resistance = floor_resistance(places[0])
     patch = np.prod(np.meshgrid(*widths[:-1], indexing="ij"), axis=0)
     half_cell = widths[-1][0] / (2 * conductivity)
     link = np.where(floor, 1 / (floor_resistance + half_cell), np.where(outdoors, 1 / (outside_film + half_cell), 0.0))
@@ -86,4 +89,5 @@ def solve(halves, floor_resistance, *, conductivity=1.0, wall=0.0, outside_film=
     ground = found.reshape(shape)[..., 0]
     flow = link * (ground if storage else 1.0 - ground)
     centre = (0,) * (dims - 1)
-    return 1.0 - flow[centre] * floor_resistance, flow[centre], (flow * patch)[floor].sum() / patch[floor].sum()
+    above = np.broadcast_to(floor_resistance, flow.shape)[centre]
+    return 1.0 - flow[centre] * above, flow[centre], (flow * patch)[floor].sum() / patch[floor].sum()
