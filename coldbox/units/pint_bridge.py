@@ -116,8 +116,6 @@ def _word_factor(text: str, kind: Kind) -> float | None:
         return None
     try:
         one = registry().Quantity(1.0, registry().parse_units(unit_words.replace("^", "**")))
-        if dims_of(one) != kind.dims:
-            return None
         size = float(one.to(_base_unit(kind.dims)).magnitude)
     except (pint.PintError, TypeError, ValueError, AttributeError):
         return None

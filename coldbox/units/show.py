@@ -112,8 +112,7 @@ def _thin(value: float, kind: Kind, digits: int | None) -> str:
 
 
 def _no_zeros(text: str) -> str:
-    text = text.rstrip("0").rstrip(".") if "." in text else text
-    return "0" if text in ("-0", "") else text
+    return text.rstrip("0").rstrip(".") if "." in text else text
 
 
 def _grouped(whole: str) -> str:

@@ -7,7 +7,7 @@ behind a later · or /. A bracket stands alone between the strokes, so that nobo
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from functools import lru_cache
 
 from coldbox.units.atoms import AMBIGUOUS, ATOMS, CASE_MATTERS, INCH, NONE, POUND, SIDE_BY_SIDE, Dims
@@ -163,31 +163,33 @@ def _pieces(run: str) -> list[tuple[float, Dims]]:
     known = _other_case().get(run.casefold())
     if known is not None:
         return [known]
-    symbols = _split(run) if len(run) <= LONGEST_RUN else None
+    symbols = (_split(run, _SYMBOLS) or _split(run.casefold(), _small_symbols())) if len(run) <= LONGEST_RUN else None
     if symbols is None:
         raise Refused(f'has a unit that is not known here, "{run}"')
     return [ATOMS[symbol] for symbol in symbols]
 
 
-def _split(run: str) -> list[str] | None:
-    """The only way to cut a run into short symbols, longest first; two to four of them."""
+def _split(run: str, symbols: Mapping[str, str]) -> list[str] | None:
+    """The way to cut a run into two to four short symbols, the longer ones first."""
     for length in range(min(3, len(run) - 1), 0, -1):
-        head, tail = _symbol(run[:length]), run[length:]
+        head, tail = symbols.get(run[:length]), run[length:]
         if head is None:
             continue
-        last = _symbol(tail)
+        last = symbols.get(tail)
         if last is not None:
             return [head, last]
-        rest = _split(tail) if len(tail) > 1 else None
+        rest = _split(tail, symbols) if len(tail) > 1 else None
         if rest is not None and len(rest) < 4:
             return [head, *rest]
     return None
 
 
-def _symbol(text: str) -> str | None:
-    if text in SIDE_BY_SIDE:
-        return text
-    return next((symbol for symbol in sorted(SIDE_BY_SIDE) if symbol.casefold() == text.casefold()), None)
+_SYMBOLS = {symbol: symbol for symbol in SIDE_BY_SIDE}
+
+
+@lru_cache(maxsize=1)
+def _small_symbols() -> dict[str, str]:
+    return {symbol.casefold(): symbol for symbol in SIDE_BY_SIDE}
 
 
 @lru_cache(maxsize=1)

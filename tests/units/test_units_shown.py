@@ -37,6 +37,7 @@ PLAIN = [kind for kind in KINDS.values() if kind.reader in ("quantity", "differe
         ("length", 1.6764, "1.676 m", "5 ft 6 in"),
         ("length", 3.6576, "3.658 m", "12 ft"),
         ("length", 0.3048, "304.8 mm", "1 ft"),
+        ("length", 1.8287, "1.829 m", "6 ft"),
         ("length", 0.30479, "304.8 mm", "12 in"),
         ("length", -1.6764, "-1.676 m", "-5 ft 6 in"),
         ("length", 1500.0, "1 500 m", "4 921 ft"),
