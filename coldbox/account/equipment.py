@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from coldbox.account.entry import Entry, Input
-from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, day, over_hours, steady_mean
+from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, called, day, over_hours, steady_mean
 from coldbox.physics.number import Number
 from coldbox.project.model import Door, Heater
 from coldbox.scene import Scene
@@ -55,7 +55,7 @@ def _fans(scene: Scene, rest: Number) -> Entry | None:
         "fans",
         "fans, declared share",
         machine.fan_share * rest,
-        ("declared share of the rest", "trade-practice", "share x mean of the rest"),
+        ("declared share", "trade-practice", "share x mean of the rest"),
         (
             Input(key="share", label="share", value=machine.fan_share, kind="share"),
             Input(key="rest_w", label="mean of the rest", value=rest, kind="power"),
@@ -100,7 +100,7 @@ def _defrost(scene: Scene, rest: Number) -> Entry | None:
         "defrost",
         "defrost, declared share",
         machine.defrost_share * rest,
-        ("declared share of the rest", "trade-practice", "share x mean of the rest"),
+        ("declared share", "trade-practice", "share x mean of the rest"),
         (
             Input(key="share", label="share", value=machine.defrost_share, kind="share"),
             Input(key="rest_w", label="mean of the rest", value=rest, kind="power"),
@@ -114,7 +114,7 @@ def _door_heater(door: Door) -> Entry:
     watts = door.count * door.heater * door.heater_to_room
     return _steady(
         f"doors.{door.name}.heater",
-        f"{door.name} door heater",
+        f"{called('door', door.name)} heater",
         watts,
         ("as given", "as-given", "n P x share to the room"),
         (
@@ -131,7 +131,7 @@ def _curtain(door: Door) -> Entry:
     return Entry(
         id=f"doors.{door.name}.curtain",
         group="equipment",
-        label=f"{door.name} door, air curtain",
+        label=f"{called('door', door.name)}, air curtain",
         sensible_w=day(door.count * door.protection_power * open_share),
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,
@@ -151,7 +151,7 @@ def _heater(heater: Heater) -> Entry:
     return Entry(
         id=f"heaters.{heater.name}",
         group="equipment",
-        label=f"{heater.kind} heater, {heater.name}",
+        label=called(f"{heater.kind} heater", heater.name),
         sensible_w=day(power * heater.to_room * heater.hours.shares()),
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,

@@ -8,7 +8,7 @@ import numpy as np
 
 from coldbox.account.air_exchange import denser_volume, entry, exchange
 from coldbox.account.entry import Entry, Input
-from coldbox.account.shapes import SECONDS_A_DAY, SECONDS_AN_HOUR, day, over_hours, steady_mean
+from coldbox.account.shapes import SECONDS_A_DAY, SECONDS_AN_HOUR, called, day, over_hours, steady_mean
 from coldbox.errors import OutOfValidity
 from coldbox.physics import doorway, moist_air
 from coldbox.physics.number import FloatArray, Number
@@ -63,8 +63,8 @@ def _traffic(scene: Scene, door: Door, share: FloatArray) -> Entry:
         behind,
         exchange(scene, behind, exchanged, denser_volume(scene, behind)),
         name=f"doors.{door.name}.traffic",
-        label=f"{air}, {door.name} door",
-        how=("Gosney and Olama doorway flow", "gosney-olama-1975", formula),
+        label=f"{air}, {called('door', door.name)}",
+        how=("doorway (Gosney-Olama)", "gosney-olama-1975", formula),
         inputs=(
             Input(key="width_m", label="width", value=door.width, kind="length"),
             Input(key="height_m", label="height", value=door.height, kind="length"),
@@ -86,7 +86,7 @@ def _gasket(scene: Scene, door: Door, share: FloatArray) -> Entry:
         behind,
         exchange(scene, behind, flow, scene.room.specific_volume),
         name=f"doors.{door.name}.gasket",
-        label=f"{door.name} door, gasket",
+        label=f"{called('door', door.name)}, gasket",
         how=("gasket leakage", "as-given", "rate x outline x closed share, times the difference of the airs"),
         inputs=(
             Input(key="rate_m2_per_s", label="rate", value=door.gasket_leakage, kind="gasket_flow"),
@@ -190,7 +190,7 @@ def _by_table(scene: Scene) -> Entry:
         f"air changes by volume, {use} use",
         leak_neighbour(scene),
         day(per_day * scene.body.volume / SECONDS_A_DAY),
-        ("average air changes by volume", "ashrae-r-loads"),
+        ("air-change table", "ashrae-r-loads"),
         (
             Input(key="changes_per_day", label="changes a day", value=per_day, kind="number"),
             Input(key="volume_m3", label="volume", value=scene.body.volume, kind="volume"),
@@ -230,7 +230,7 @@ def _ventilation(scene: Scene, fresh: Ventilation) -> Entry:
         behind,
         exchange(scene, behind, flow, behind.specific_volume),
         name=f"ventilation.{fresh.name}",
-        label=f"fresh air, {fresh.name}",
+        label=called("fresh air", fresh.name),
         how=("ventilation", "ashrae-f-psychrometrics", "rho V (h_outside - h_room) x (1 - recovery)"),
         inputs=(
             Input(key="flow_m3_per_s", label="V", value=fresh.flow, kind="flow"),

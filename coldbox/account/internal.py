@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 
 from coldbox.account.entry import Entry, Input
-from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, day
+from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, called, day
 from coldbox.physics.number import Number
 from coldbox.project.model import Light, Motor, People
 from coldbox.scene import Scene
@@ -47,11 +47,11 @@ def _people(scene: Scene, people: People) -> Entry:
     return Entry(
         id=f"people.{people.name}",
         group="internal",
-        label=f"people, {people.name}",
+        label=called("people", people.name),
         sensible_w=day((each - latent_each) * present),
         latent_w=day(latent_each * present),
         moisture_kg_per_day=latent_each * people.count * hours_a_day / 24.0 * SECONDS_A_DAY / EVAPORATION_J_PER_KG,
-        method="heat of people by room temperature",
+        method="people (ASHRAE)",
         source=source,
         formula="n (272 - 6 t_room) over their hours",
         inputs=(
@@ -67,7 +67,7 @@ def _lights(light: Light) -> Entry:
     return Entry(
         id=f"lights.{light.name}",
         group="internal",
-        label=f"lights, {light.name}",
+        label=called("lights", light.name),
         sensible_w=day(light.power * light.count * light.hours.shares()),
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,
@@ -87,11 +87,11 @@ def _motor(table: str, motor: Motor) -> Entry:
     return Entry(
         id=f"{table}.{motor.name}",
         group="internal",
-        label=f"{motor.kind or 'motor'}, {motor.name}",
+        label=called(motor.kind or "motor", motor.name),
         sensible_w=day(motor.power * share * motor.count * motor.hours.shares()),
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,
-        method=f"motor, {motor.place}",
+        method=f"as given, {motor.place}",
         source=source,
         formula="n P over their hours, times the share that stays inside",
         inputs=(

@@ -153,7 +153,7 @@ def _respiration(scene: Scene, lot: Lot, kind: Goods) -> Entry | None:
         sensible_w=watts,
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,
-        method="respiration by temperature",
+        method="respiration",
         source=kind.respiration_source,
         formula="m w(t), stored goods at t_room and today's intake while it cools",
         inputs=tuple(inputs),
@@ -193,7 +193,7 @@ def _transpiration(scene: Scene, lot: Lot) -> Entry | None:
         sensible_w=-latent,
         latent_w=latent,
         moisture_kg_per_day=water * SECONDS_A_DAY,
-        method="transpiration coefficient",
+        method="transpiration",
         source="ashrae-r-foods",
         formula="m k_t (p_s(t_room) - p_room); the water takes its heat from the goods and the air",
         inputs=(

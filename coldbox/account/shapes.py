@@ -42,3 +42,11 @@ def steady_mean(hours: FloatArray) -> Number:
     """Mean over the day as a steady figure that broadcasts again, a float or (draws, 1)."""
     mean = hours.mean(axis=-1, keepdims=True)
     return float(mean[0]) if mean.ndim == 1 else mean
+
+
+def called(kind: str, name: str) -> str:
+    """A thing's kind and name for a label, said once: "main door", "quay door", "lights, aisle", "lights"."""
+    bare = name.split("[")[0]
+    if kind == "door":
+        return name if "door" in name else f"{name} door"
+    return kind if bare in (kind, f"{kind}s", kind.removesuffix("s")) else f"{kind}, {name}"

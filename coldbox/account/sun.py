@@ -25,7 +25,7 @@ def entry(scene: Scene, solved: Outdoors, place: int) -> Entry:
     weather = scene.weather
     overcast = weather is not None and weather.sun is not None and weather.sun.overcast
     glass = matters(one.solar_gain)
-    sky = "overcast sky" if overcast else "clear sky with tau_b and tau_d (ASHRAE)"
+    sky = "overcast sky" if overcast else "clear sky (ASHRAE)"
     peak = Input(
         key="peak_irradiance_w_per_m2",
         label="I, brightest hour",
@@ -88,7 +88,7 @@ def allowed(scene: Scene, one: Surface) -> Entry | None:
         sensible_w=heat,
         latent_w=np.zeros(heat.shape),
         moisture_kg_per_day=0.0,
-        method="added degrees for sun (ASHRAE)",
+        method="allowance (ASHRAE)",
         source="ashrae-r-loads",
         formula="UA Δt_sun, all day",
         inputs=(

@@ -121,7 +121,7 @@ def _outdoor(scene: Scene, solved: Outdoors, place: int, around: tuple[Input, ..
         _entry(
             one,
             solved.day(solved.plain_w, place),
-            method="outside surface balance and periodic conduction (ISO 13786)",
+            method="periodic (ISO 13786)",
             source="iso-13786",
             formula="(t_surface - t_room) A / (R + R_si) in the day's mean, delayed and damped by its layers",
             remark=_of_k(one),
@@ -149,7 +149,7 @@ def _allowed(scene: Scene, one: Surface) -> list[Entry]:
         _entry(
             one,
             day(through * (air - scene.room.temperature_c)),
-            method="thermal transmittance (ISO 6946)",
+            method="U A (ISO 6946)",
             source="iso-6946",
             formula="UA (t_out - t_room), hour by hour",
             remark=_of_k(one),
@@ -168,7 +168,7 @@ def _road(scene: Scene, one: Surface) -> Entry:
     return _entry(
         one,
         heat,
-        method="periodic conduction (ISO 13786)",
+        method="periodic (ISO 13786)",
         source="iso-13786",
         formula="UA (t_out - t_room) in the day's mean, delayed and damped by its layers",
         remark=_of_k(one) or "outdoor air beneath, out of sun and sky",
@@ -182,7 +182,7 @@ def _steady(scene: Scene, one: Surface) -> Entry:
     return _entry(
         one,
         heat,
-        method="thermal transmittance (ISO 6946)",
+        method="U A (ISO 6946)",
         source="iso-6946",
         formula="UA (t_behind - t_room)",
         remark=_of_k(one),

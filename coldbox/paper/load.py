@@ -12,7 +12,7 @@ from coldbox.paper.box import box_lines
 from coldbox.paper.document import Bars, Block, Column, Document, Heading, Paragraph, Table
 from coldbox.project.origins import defaults_used
 from coldbox.tables.load import source
-from coldbox.units import show
+from coldbox.units import display_unit, show
 
 System = Literal["SI", "IP"]
 
@@ -41,16 +41,16 @@ def document(load: Load, system: System, *, how: bool = False) -> Document:
     return Document(title=load.project.name, blocks=tuple(blocks))
 
 
-def figure(value: object, kind: str, system: System) -> str:
+def figure(value: object, kind: str, system: System, digits: int | None = None) -> str:
     """A figure as people read it; of draws, the mean."""
-    return show(float(np.mean(value)) if isinstance(value, np.ndarray) else value, kind, system)
+    return show(float(np.mean(value)) if isinstance(value, np.ndarray) else value, kind, system, digits)
 
 
 def _answer(load: Load, system: System) -> Iterator[Block]:
     project = load.project
 
     def power(value: object) -> str:
-        return figure(value, "power", system)
+        return figure(value, "power", system, 3)
 
     room = figure(project.box.temperature, "temperature", system)
     yield Heading(text=f"{project.name}, {room}: needs {power(load.required_capacity_w)} of refrigeration", level=1)
@@ -101,43 +101,62 @@ def _biggest(load: Load) -> str:
 
 
 def _account(load: Load, system: System, sources: dict[str, int]) -> Table:
-    counted = max(sum(float(np.abs(entry.hours_w).sum()) for entry in load.entries), 1e-9)
+    """Every entry by size, in one unit a column, so that the figures can be run down with a finger."""
+    watt, kilowatt_hour = display_unit("power", system), display_unit("energy", system)
     ordered = sorted(load.entries, key=lambda entry: -abs(float(entry.hours_w.sum())))
+    peaks = [float(entry.hours_w[load.peak_hour]) / watt.factor for entry in ordered]
+    days = [float(entry.hours_w.sum()) * 3600.0 / kilowatt_hour.factor for entry in ordered]
+    counted = max(sum(abs(value) for value in days), 1e-9)
+    peak_places, day_places = _places(peaks, 3), _places(days, 4)
     rows = tuple(
         (
             entry.label,
-            show(float(entry.hours_w[load.peak_hour]), "power", system),
-            show(float(entry.hours_w.sum()) * 3600.0, "energy", system),
-            f"{float(entry.hours_w.sum()) / counted:.1%}".replace("%", " %"),
-            f"{entry.method} [{sources[entry.source]}]",
+            _fixed(peak, peak_places),
+            _fixed(daily, day_places),
+            f"{100.0 * daily / counted:.1f}",
+            entry.method,
+            f"[{sources[entry.source]}]",
         )
-        for entry in ordered
+        for entry, peak, daily in zip(ordered, peaks, days, strict=True)
     )
+    hour, daily = float(load.hours_w[load.peak_hour]), float(np.mean(load.daily_heat_j))
     return Table(
         columns=(
             Column(title="entry", gives=True),
-            Column(title=f"at {_hour(load.peak_hour)}", align="right"),
-            Column(title="a day", align="right"),
-            Column(title="share", align="right"),
-            Column(title="method [source]", gives=True),
+            Column(title=f"{watt.unit} {_hour(load.peak_hour)}", align="right"),
+            Column(title=f"{kilowatt_hour.unit}/day", align="right"),
+            Column(title="%", align="right"),
+            Column(title="method", gives=True),
+            Column(title="source"),
         ),
         rows=rows,
         totals=(
-            "all (rounded after adding)",
-            show(float(load.hours_w[load.peak_hour]), "power", system),
-            figure(load.daily_heat_j, "energy", system),
+            "all, rounded after adding",
+            _fixed(hour / watt.factor, peak_places),
+            _fixed(daily / kilowatt_hour.factor, day_places),
+            "",
             "",
             "",
         ),
     )
+
+
+def _places(values: list[float], digits: int) -> int:
+    """Places behind the point that give the largest figure so many digits."""
+    largest = max((abs(value) for value in values), default=0.0)
+    return max(0, digits - len(f"{largest:.0f}"))
+
+
+def _fixed(value: float, places: int) -> str:
+    return f"{value:,.{places}f}".replace(",", " ")
 
 
 def _day(load: Load, system: System) -> Bars:
     return Bars(
         label="day",
         values=tuple(float(value) for value in load.hours_w),
-        lowest=show(float(load.hours_w.min()), "power", system),
-        highest=show(float(load.hours_w.max()), "power", system),
+        lowest=figure(float(load.hours_w.min()), "power", system, 3),
+        highest=figure(float(load.hours_w.max()), "power", system, 3),
     )
 
 
@@ -145,9 +164,9 @@ def _after(load: Load, system: System) -> Iterator[str]:
     frost = float(np.mean(load.frost_kg_per_day))
     parts = []
     if frost > 0.005:
-        parts.append(f"Frost on the coil {figure(frost, 'mass', system)} a day.")
-    parts.append(f"UA {figure(load.ua_w_per_k, 'point_transmittance', system)}.")
-    parts.append(f"K {figure(load.k_w_per_m2k, 'transmittance', system)} on the mean of inside and outside area.")
+        parts.append(f"Frost on the coil {figure(frost, 'mass', system, 3)} a day.")
+    parts.append(f"UA {figure(load.ua_w_per_k, 'point_transmittance', system, 3)}.")
+    parts.append(f"K {figure(load.k_w_per_m2k, 'transmittance', system, 3)} on the mean of inside and outside area.")
     yield " ".join(parts)
     if float(np.mean(load.cold_w)) > 0.5:
         taken = "counted" if load.project.box.credit_cold else "not counted in the capacity (credit_cold)"

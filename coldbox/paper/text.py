@@ -10,6 +10,7 @@ from coldbox.paper.document import Bars, Block, Document, Heading, Paragraph, Ta
 STEPS = "▁▂▃▄▅▆▇█"
 ASCII_STEPS = "_.-=+*%#"
 GAP = "  "
+NARROWEST = 12  # a column that gives way keeps this much
 
 
 def render(document: Document, *, width: int = 80, ascii_only: bool = False) -> str:
@@ -36,14 +37,17 @@ def _block(block: Block, width: int, ascii_only: bool) -> list[str]:
 
 
 def _table(table: Table, width: int) -> list[str]:
-    rows = [tuple(column.title for column in table.columns), *table.rows]
+    titles = tuple(column.title for column in table.columns)
+    rows = [titles, *table.rows] if any(titles) else list(table.rows)
     if table.totals:
         rows.append(table.totals)
     widths = [max(len(row[index]) for row in rows) for index in range(len(table.columns))]
     spare = width - 1 - sum(widths) - len(GAP) * (len(widths) - 1)
-    for index, column in enumerate(table.columns):
-        if column.gives and spare < 0:
-            widths[index] = max(widths[index] + spare, 12)
+    giving = [index for index, column in enumerate(table.columns) if column.gives]
+    while spare < 0 and any(widths[index] > NARROWEST for index in giving):
+        widest = max(giving, key=lambda index: widths[index])
+        widths[widest] -= 1
+        spare += 1
     return list(_table_lines(table, rows, widths))
 
 

@@ -67,7 +67,7 @@ class ChenCurve(Curve):
 class QuotedCurve(Curve):
     """From two specific heats, a latent heat and a freezing point."""
 
-    method: str = "quoted specific heats and latent heat"
+    method: str = "quoted heats"
     source: str = "ashrae-r-loads"
     specific_heat_above: Number
     specific_heat_below: Number

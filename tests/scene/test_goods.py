@@ -66,7 +66,7 @@ def test_quoted_figures_win() -> None:
         specific_heat_above=3400.0, specific_heat_below=1900.0, latent_heat=210e3, freezing_point=-3.0, composition=BEEF
     )
     found = goods(dressing)
-    assert found.method == "quoted specific heats and latent heat"
+    assert found.method == "quoted heats"
     assert found.enthalpy(7.0) - found.enthalpy(-13.0) == pytest.approx(34e3 + 210e3 + 19e3)
     assert found.ice_fraction(np.array([5.0, -10.0])) == pytest.approx([0.0, 210e3 / 333.6e3])
 
