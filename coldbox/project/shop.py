@@ -29,6 +29,7 @@ TABLES: Mapping[str, str] = {
 }
 """The files of the library, and the table of the project file that their rows are like."""
 
+_HEAD = re.compile(r'^\[(?:"([^"\\\n]+)"|([A-Za-z0-9_-]+))\][ \t]*(?:#.*)?\r?$', re.MULTILINE)
 _DATED = re.compile(r"^(.*\S)\s+(\d{4}-\d{2}-\d{2})$")
 
 
@@ -50,61 +51,99 @@ class Library:
     def __init__(self, folder: str | None) -> None:
         self.folder = folder
         self.problems: list[Problem] = []
-        self._rows: dict[str, dict[str, Block]] = {}
-        self._dates: dict[tuple[str, str], str] = {}
+        self._files: dict[str, _File] = {}
 
     def row(self, table: str, name: str) -> Block:
         """One row, as a block of the project file would say it; the name may carry a date. Raises UnknownName."""
-        rows, plain = self._table(table), without_date(name)
-        if plain not in rows:
-            raise UnknownName(f"{table} of the shop library", plain, nearest(plain, rows))
-        return rows[plain]
+        file, plain = self._file(table), without_date(name)
+        found = file.row(plain)
+        if found is None:
+            raise UnknownName(f"{table} of the shop library", plain, nearest(plain, file.parts))
+        return found
 
     def names(self, table: str) -> tuple[str, ...]:
         """The names of a table's rows."""
-        return tuple(self._table(table))
+        return tuple(self._file(table).parts)
 
     def dated(self, table: str, row: Block) -> str:
         """What a project writes as `library` when it copies this row: "NAME 2026-03-02"."""
-        return f"{row.name} {self._dates[table, row.name]}".strip()
+        return f"{row.name} {self._file(table).dates[row.name]}".strip()
 
     def said(self, table: str, row: Block) -> str:
         """Where a value of this row came from, in words."""
         return f"shop library, {self.dated(table, row)}"
 
-    def _table(self, table: str) -> dict[str, Block]:
-        if table not in self._rows:
-            self._rows[table] = self._read(table)
-        return self._rows[table]
+    def _file(self, table: str) -> _File:
+        if table not in self._files:
+            self._files[table] = self._opened(table)
+        return self._files[table]
 
-    def _read(self, table: str) -> dict[str, Block]:
+    def _opened(self, table: str) -> _File:
         from coldbox.project.store import read_text
 
-        if self.folder is None:
-            return {}
-        file = os.path.join(self.folder, f"{table}.toml")
-        if not os.path.exists(file):
-            return {}
+        name = "" if self.folder is None else os.path.join(self.folder, f"{table}.toml")
+        text = ""
+        if name and os.path.exists(name):
+            try:
+                text = read_text(name)
+            except BadProject as trouble:
+                self.problems.extend(trouble.problems)
+        return _File(TABLES[table], name, text, self.problems)
+
+
+class _File:
+    """One file of the library. Only rows that are asked for are read, since a shop may have hundreds."""
+
+    def __init__(self, like: str, file: str, text: str, problems: list[Problem]) -> None:
+        self.like, self.file, self.text, self.problems = like, file, text, problems
+        self.dates: dict[str, str] = {}
+        self.parts: dict[str, Any] = _parts(text) or self._whole()
+        self._blocks: dict[str, Block | None] = {}
+
+    def _whole(self) -> dict[str, Any]:
+        """Every row by name, read at once: for files that are not plainly one block after the other."""
         try:
-            content = tomllib.loads(text := read_text(file))
-        except BadProject as trouble:
-            self.problems.extend(trouble.problems)
-            return {}
+            return tomllib.loads(self.text)
         except (tomllib.TOMLDecodeError, RecursionError) as trouble:
             where = re.search(r"line (\d+)", str(trouble))
             said = f"This file of the shop library is no TOML: {str(trouble) or 'brackets stand too deep'}."
-            self.problems.append(Problem(said, file=file, line=int(where.group(1)) if where else None))
+            self.problems.append(Problem(said, file=self.file, line=int(where.group(1)) if where else None))
             return {}
-        reading = _Reading(file, text, self.problems)
-        found = {}
-        for name, row in content.items():
-            if not isinstance(row, dict):
-                reading.problem((name,), f'A row of the library is a table: ["{name}"] and its keys under it.')
-                continue
-            given = dict(row)
-            self._dates[table, name] = reading.date(name, given.pop("date", None))
-            found[name] = reading.block(TABLES[table], (name,), given, name)
-        return found
+
+    def row(self, name: str) -> Block | None:
+        if name not in self._blocks:
+            self._blocks[name] = self._read(name)
+        return self._blocks[name]
+
+    def _read(self, name: str) -> Block | None:
+        given = self.parts.get(name)
+        if isinstance(given, str):
+            try:
+                given = tomllib.loads(given)[name]
+            except (tomllib.TOMLDecodeError, RecursionError):
+                self.parts = self._whole()
+                given = self.parts.get(name)
+        if given is None:
+            return None
+        reading = _Reading(self.file, self.text, self.problems)
+        if not isinstance(given, dict):
+            reading.problem((name,), f'A row of the library is a table: ["{name}"] and its keys under it.')
+            return None
+        keys = dict(given)
+        self.dates[name] = reading.date(name, keys.pop("date", None))
+        return reading.block(self.like, (name,), keys, name)
+
+
+def _parts(text: str) -> dict[str, Any] | None:
+    """The text of each row by its name; None where the file is not plainly one block after the other."""
+    heads = list(_HEAD.finditer(text))
+    names = [head.group(1) or head.group(2) for head in heads]
+    if not heads or len(set(names)) < len(names) or len(heads) < text.count("\n[") + text.startswith("["):
+        return None
+    if any(line.strip() and not line.lstrip().startswith("#") for line in text[: heads[0].start()].split("\n")):
+        return None
+    ends = [*(head.start() for head in heads[1:]), len(text)]
+    return {name: text[head.start() : end] for name, head, end in zip(names, heads, ends, strict=True)}
 
 
 class _Reading:

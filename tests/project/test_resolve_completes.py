@@ -12,7 +12,9 @@ from typed import BOXES, LEAST, SITE, project
 from coldbox.project import store
 from coldbox.project.model import FACES, Project
 from coldbox.project.origins import declaration, defaults_used
+from coldbox.project.resolve.surroundings import nearest_place
 from coldbox.record import Record
+from coldbox.tables import load
 from coldbox.units.clock import Rate
 
 OUTSIDE = LEAST.replace('"room"', '"outdoors"') + SITE
@@ -200,6 +202,16 @@ def test_ground_takes_the_year_of_the_nearest_place() -> None:
     typed = project(ON_GROUND.replace("[site]", '[site]\nground_temperature = "11 °C"\nyearly_swing = "8 K"'))
     assert typed.site is not None
     assert (typed.site.ground_temperature, typed.site.yearly_swing) == (11.0, 8.0)
+
+
+@pytest.mark.parametrize(("north", "east"), [(1.0, 0.0), (0.0, 1.5), (-1.2, 1.0)])
+def test_the_distance_to_a_place_is_that_of_the_great_circle(north: float, east: float) -> None:
+    row = load.row("weather", "Copenhagen")
+    name, km = nearest_place(row["latitude"] + north, row["longitude"] + east)
+    here, there = math.radians(row["latitude"]), math.radians(row["latitude"] + north)
+    cosine = math.sin(here) * math.sin(there) + math.cos(here) * math.cos(there) * math.cos(math.radians(east))
+    assert name == "Copenhagen"
+    assert km == pytest.approx(6371.0 * math.acos(cosine), rel=1e-6)  # law of cosines on the sphere
 
 
 def test_only_ground_needs_no_design_day() -> None:

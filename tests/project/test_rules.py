@@ -116,6 +116,10 @@ BROKEN = {
         LEAST + '[[doors]]\nwidth = "1 m"\nheight = "2 m"\npassages = "300/h"\nopen_each = "20 s"\n',
         "doors[1].passages", "167 %", "passages",
     ),
+    "a day's passages in too few hours": (
+        LEAST + '[[doors]]\nwidth = "1 m"\nheight = "2 m"\npassages = "2000/day"\nhours = "07:00-12:00"\n',
+        "doors[1].passages", "167 %", "passages",
+    ),
     "spread over no hours": (
         LEAST + '[[doors]]\nwidth = "1 m"\nheight = "2 m"\npassages = "300/day"\nhours = "never"\n',
         "doors[1].passages", "hours", "passages",

@@ -149,16 +149,38 @@ def test_what_is_wrong_in_the_library_names_the_library_file(tmp_path: Path) -> 
     assert wrong["thick.thickness"].line == 4
     assert "150" in wrong["thick.thickness"].text
     assert wrong["thick.colour"].line == 5
-    assert "2026-03-02" in wrong["undated"].text
+    assert "undated" not in wrong  # nobody asked for that row
+    library = shop.library(tmp_path / "a.toml")
+    library.row("constructions", "undated")
+    assert "2026-03-02" in library.problems[0].text
 
 
-@pytest.mark.parametrize("text", ["this is no TOML", "x = 1\n", "a = [" * 3000])
+@pytest.mark.parametrize(
+    "text", ["this is no TOML", 'thick = 1\n["thin"]\n', "a = [" * 3000, '["thick"]\nr_value = 5 m\n', ROW + ROW]
+)
 def test_a_broken_library_is_a_problem_of_its_file(tmp_path: Path, text: str) -> None:
     _shared(tmp_path, text)
     library = shop.library(tmp_path / "a.toml")
     with pytest.raises(UnknownName):
         library.row("constructions", "thick")
     assert [problem.file for problem in library.problems] == [str(tmp_path / "shared" / "constructions.toml")]
+
+
+def test_rows_are_read_however_the_file_is_laid_out(tmp_path: Path) -> None:
+    """In blocks, only the row asked for is read; a file that is laid out otherwise is read whole."""
+    inline = 'thick = { date = "2026-03-02", r_value = "RSI 6", thickness = "150 mm" }\n'
+    text = ROW.replace("date =", 'notes = """\n["thin"]\n"""\ndate =')
+    under = ROW.replace('["thick"]', "[thick]") + '[[thick.layers]]\nmaterial = "cork"\n'
+    rows = []
+    for number, layout in enumerate((ROW + '["broken"]\nr_value = "RSI"\n', inline, text, under.partition("[[")[0])):
+        folder = tmp_path / str(number)
+        _shared(folder, layout)
+        library = shop.library(folder / "a.toml")
+        row = library.row("constructions", "thick")
+        assert not library.problems
+        assert library.dated("constructions", row) == "thick 2026-03-02"
+        rows.append({key: row.values[key].value for key in ("r_value", "thickness")})
+    assert all(row == rows[0] for row in rows)
 
 
 @pytest.mark.parametrize(
