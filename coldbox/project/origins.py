@@ -9,6 +9,7 @@ from coldbox.project import fields
 from coldbox.project.model import Project
 from coldbox.units import KINDS, parse, show
 
+_AS_TYPED = ("yes_no", "word", "name", "text", "count", "month", "hours")
 _LATER = ("outage.", "trip.", "spreads.", "fit.")
 _LATER_KEYS = ("piece", "exposed", "air_film", "wrap", "start_temperature", "minutes", "band", "fittings")
 
@@ -61,7 +62,7 @@ def declaration(path: str) -> fields.Field | None:
 def _shown(path: str, text: str, system: str) -> str:
     """A default in the units of the project; words, and what stands for no value, as they are."""
     field = declaration(path)
-    if field is None or field.many or field.kind not in KINDS or system == "SI":
+    if field is None or field.many or field.kind in _AS_TYPED or field.kind not in KINDS or system == "SI":
         return text
     try:
         return show(parse(text, field.kind).value, field.kind, "IP")
@@ -74,4 +75,5 @@ def looked_up(project: Project) -> list[tuple[str, str]]:
     found = {
         (path.rpartition(".")[0], origin.reason) for path, origin in project.origins.items() if origin.kind == "library"
     }
-    return sorted(found)
+    owners = {owner for owner, _ in found}
+    return sorted(pair for pair in found if not any(pair[0].startswith(f"{owner}.") for owner in owners))

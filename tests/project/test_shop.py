@@ -76,7 +76,7 @@ def test_a_name_alone_is_looked_up_and_said(tmp_path: Path) -> None:
     (tmp_path / "a.toml").write_text(NAMED, encoding="utf-8")
     found = store.open(tmp_path / "a.toml")
     assert found.constructions["thick"].r_value == 6.0
-    assert ("constructions.thick", "shop library, thick 2026-03-02") in looked_up(found)
+    assert looked_up(found) == [("constructions.thick", "shop library, thick 2026-03-02")]
 
 
 def test_a_copied_value_holds_whatever_the_library_says(tmp_path: Path) -> None:
