@@ -112,3 +112,10 @@ class FileTrouble(ColdboxError):
 
     def __str__(self) -> str:
         return f"{self.file}: {self.reason}"
+
+
+class Stopped(ColdboxError):
+    """Long work was asked to stop."""
+
+    def __str__(self) -> str:
+        return "Stopped before the end."
