@@ -38,8 +38,8 @@ class Outdoors(Record):
     dew_point_c: FloatArray  # in the hour of that least, found at the mean of the draws
 
     def sunlit(self, place: int) -> bool:
-        """Whether any sun falls on the surface at this place of the stack."""
-        return matters(self.peak_incident[place])
+        """Whether the sun brings anything through the surface at this place of the stack."""
+        return matters(self.sun_w[place])
 
     def day(self, stacked: FloatArray, place: int) -> FloatArray:
         """One surface's figure of the day, (24,) or (draws, 24), from a stack of these."""
