@@ -35,12 +35,12 @@ def _rest(entries: list[Entry]) -> Number:
 def _fans(scene: Scene, rest: Number) -> Entry | None:
     """Fans run all day but for the defrosts; before any are named they are a declared share of the rest."""
     machine = scene.project.machine
-    if machine.fans:
+    if np.any(machine.fans > 0):
         stopped = defrost_seconds(scene)
         watts = machine.fans * machine.fan_power * (1.0 - stopped / SECONDS_A_DAY)
         return _steady(
             "fans",
-            f"fans, {machine.fans}",
+            f"fans, {float(np.mean(machine.fans)):g}",
             watts,
             ("as given", "as-given", "n P, stopped while it defrosts"),
             (

@@ -55,8 +55,9 @@ def _traffic(scene: Scene, door: Door, share: FloatArray) -> Entry:
     flow = doorway.doorway_flow(door.width, door.height, scene.room.density, behind.density)
     held_back = door.flow_factor * (1.0 - door.effectiveness)
     exchanged = day(door.count * flow * share * held_back)
-    longest = np.maximum(door.open_each, over_hours(door.stood_open, door.hours).max(axis=-1) * SECONDS_AN_HOUR)
-    spent = np.any(np.max(flow, axis=-1) * np.max(longest) * held_back > scene.body.volume)
+    stood_open = over_hours(door.stood_open, door.hours).max(axis=-1, keepdims=True) * SECONDS_AN_HOUR
+    longest = np.maximum(door.open_each, stood_open)
+    spent = np.any(flow * longest * held_back > scene.body.volume)
     air = "outside air" if door.neighbour == "outdoors" else f"{door.neighbour} air"
     formula = "V fully open x open share x flow factor x (1 - protection), times the difference of the airs"
     return entry(

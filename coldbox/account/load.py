@@ -7,6 +7,8 @@ import numpy as np
 from coldbox.account import equipment, findings, frost, infiltration, internal, product, quoted, transmission
 from coldbox.account.capacity import capacity
 from coldbox.account.entry import Entry, Load
+from coldbox.account.shapes import NOTHING
+from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Project
 from coldbox.scene import Scene
 from coldbox.scene.build import build
@@ -23,7 +25,7 @@ def load(project: Project) -> Load:
     entries = _account(scene, envelope)
     sized = capacity(project, entries, envelope.ua_w_per_k)
     frost_kg = frost.frost_kg_per_day(scene, entries)
-    hours_w = np.sum([np.broadcast_to(entry.hours_w, _shape(entries)) for entry in entries], axis=0)
+    hours_w = _sum(entries)
     return Load(
         project=project,
         entries=tuple(entries),
@@ -31,8 +33,8 @@ def load(project: Project) -> Load:
         daily_heat_j=hours_w.sum(axis=-1) * 3600.0,
         counted_daily_j=sized.counted_daily_j,
         cold_w=sized.cold_w,
-        run_hours=project.sizing.run_hours / 3600.0,
-        safety=project.sizing.safety,
+        run_hours=_flat(project.sizing.run_hours / 3600.0),
+        safety=_flat(project.sizing.safety),
         peak_hour=sized.peak_hour,
         peak_w=sized.peak_w,
         by_daily_w=sized.by_daily_w,
@@ -40,10 +42,10 @@ def load(project: Project) -> Load:
         by_atp_w=sized.by_atp_w,
         required_capacity_w=sized.required_w,
         governs=sized.governs,
-        frost_kg_per_day=frost_kg,
-        ua_w_per_k=envelope.ua_w_per_k,
-        k_w_per_m2k=envelope.k_w_per_m2k,
-        facts={**envelope.facts, **frost.facts(scene, frost_kg)},
+        frost_kg_per_day=_flat(frost_kg),
+        ua_w_per_k=_flat(envelope.ua_w_per_k),
+        k_w_per_m2k=_flat(envelope.k_w_per_m2k),
+        facts={key: _flat(value) for key, value in {**envelope.facts, **frost.facts(scene, frost_kg)}.items()},
         findings=findings.findings(scene, envelope, entries, sized),
     )
 
@@ -60,5 +62,13 @@ def _account(scene: Scene, envelope: transmission.Envelope) -> list[Entry]:
     return quoted.apply(scene, [*others, *equipment.entries(scene, rest)])
 
 
-def _shape(entries: list[Entry]) -> tuple[int, ...]:
-    return np.broadcast_shapes((24,), *(entry.hours_w.shape for entry in entries))
+def _sum(entries: list[Entry]) -> FloatArray:
+    total = NOTHING
+    for entry in entries:
+        total = total + entry.sensible_w + entry.latent_w
+    return total
+
+
+def _flat(value: Number) -> Number:
+    """A steady figure without its hour axis: float or (draws,)."""
+    return value[..., 0] if isinstance(value, np.ndarray) and value.ndim > 1 else value
