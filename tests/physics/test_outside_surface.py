@@ -114,6 +114,24 @@ def test_draws_and_surfaces_are_the_single_ones() -> None:
         assert got.inside_w_per_m2[i, j] == pytest.approx(alone.inside_w_per_m2, abs=1e-8)
 
 
+def test_pieces_make_the_whole(monkeypatch: pytest.MonkeyPatch) -> None:
+    air = DAY + np.linspace(-5.0, 5.0, 777)[:, None]
+    share = np.array([1.0, 0.5]).reshape(2, 1, 1)
+    found = []
+    for rows in (50, 100_000):
+        monkeypatch.setattr(surface, "_ROWS", rows)
+        found.append(solved(air_c=air, sky_share=share))
+    assert np.allclose(found[0].surface_c, found[1].surface_c, atol=1e-9)
+    assert np.allclose(found[0].inside_w_per_m2, found[1].inside_w_per_m2, atol=1e-9)
+
+
+@pytest.mark.parametrize(("panel", "rounds"), [(FOAM, 7), (MASONRY, 9)])
+def test_few_rounds_are_enough(monkeypatch: pytest.MonkeyPatch, panel: Response, rounds: int) -> None:
+    monkeypatch.setattr(surface, "_ROUNDS", rounds)
+    solved(panel)
+    solved(panel, absorbed=0.9 * SUN, sky_share=1.0)
+
+
 def test_looser_tolerance_is_kept() -> None:
     exact, loose = solved(MASONRY), solved(MASONRY, tolerance_k=1e-3)
     assert 0.0 < np.abs(exact.surface_c - loose.surface_c).max() < 1e-3

@@ -173,8 +173,30 @@ def test_areas_of_films_and_layers_give_the_conductance_of_the_panel() -> None:
     whole = 1.0 / (FOAM.resistance / layers + 0.13 / inside) + 0.02 * outside
     assert panel.u * outside == pytest.approx(whole, rel=1e-12)
     assert panel.transfer[0] * outside == pytest.approx(whole, rel=1e-12)
-    equal = response([FOAM], 0.13)
-    assert np.allclose(response([FOAM], 0.13, layers_area=1.0).transfer, equal.transfer, rtol=1e-14)
+    x = np.sqrt(1j * OMEGA[1:12] * FOAM.resistance * FOAM.heat_capacity)
+    slab, film = FOAM.resistance * outside / layers, 0.13 * outside / inside
+    closed = 1.0 / (slab * np.sinh(x) / x + film * np.cosh(x)) + 0.02
+    assert panel.transfer[1:12] == pytest.approx(closed, rel=1e-9)
+
+
+def test_series_and_closed_form_meet() -> None:
+    xx = 1j * np.linspace(2e-4, 9e-4, 13)
+    for series, closed in zip(periodic._layer(xx, 0.0), periodic._layer(xx, 1e9), strict=True):
+        assert np.abs(series / closed - 1.0).max() < 1e-13
+    x = np.sqrt(xx)
+    assert periodic._layer(xx, 1e9)[1] == pytest.approx(1.0 / np.cosh(x), rel=1e-14)
+
+
+def test_pieces_make_the_whole(monkeypatch: pytest.MonkeyPatch) -> None:
+    thickness = np.linspace(0.05, 0.2, 2 * 777).reshape(2, 777, 1)
+    surface = np.random.default_rng(5).uniform(-5.0, 40.0, (777, 24))
+    found = []
+    for rows in (50, 100_000):
+        monkeypatch.setattr(periodic, "_ROWS", rows)
+        panel = response([STEEL, FOAM.replace(thickness=thickness)], 0.13)
+        found.append((panel.transfer, panel.admittance, through_day(panel.transfer, surface, -20.0)))
+    for piecewise, whole in zip(*found, strict=True):
+        assert np.allclose(piecewise, whole, rtol=1e-12, atol=1e-12)
 
 
 def test_stacked_draws_are_the_single_ones() -> None:

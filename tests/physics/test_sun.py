@@ -54,6 +54,12 @@ def test_hours_run_over_midnight_into_the_next_day() -> None:
     assert late.azimuth == pytest.approx(early.azimuth, abs=1e-9)
 
 
+def test_the_clock_is_ahead_of_utc_eastward() -> None:
+    # At 30° E under UTC+2 the clock shows sun time, but for the equation of time: 6 minutes on 21 July.
+    at = sun.position(30.0, 30.0, 7, 21, sun.instants(2.0, 60))
+    assert np.argmax(at.altitude) == pytest.approx(12 * 60 + 6, abs=2)
+
+
 @pytest.mark.parametrize(("place", "year"), [((43.0, -8.0), 1949), ((91.0, 0.0), 2026), ((0.0, 181.0), 2026)])
 def test_position_refuses_what_it_was_not_made_for(place: tuple[float, float], year: int) -> None:
     with pytest.raises(OutOfValidity):
