@@ -52,6 +52,14 @@ def test_walls_are_counted_to_the_safe_side(wall, resistance):
     assert surface - 0.003 <= ours <= surface + 0.035
 
 
+def test_walls_widen_the_rectangle_all_round():
+    def under(length, width, wall):
+        size = ground.characteristic_dimension(length * width, 2 * (length + width))
+        return ground.below_slab_centre(1.0, 0.0, 0.5, size, 1.0, area=length * width, edge_wall=wall)
+
+    assert under(5.0, 3.0, 0.4) == pytest.approx(under(5.8, 3.8, 0.0), rel=1e-12)
+
+
 @pytest.mark.parametrize("thick", [0.6, 1.0, 2.0, 4.0, 8.0])
 @pytest.mark.parametrize("soil, capacity", [(1.5, 3.0e6), (2.0, 2.0e6), (3.5, 2.0e6)])
 def test_the_years_wave_against_two_dimensions(thick, soil, capacity):

@@ -72,6 +72,12 @@ def test_spaces_grow_no_worse_with_thickness_and_foil(direction):
     np.testing.assert_allclose(meeting[0], meeting[1], rtol=0.04)
 
 
+def test_air_under_a_warm_lid_calms_with_depth():
+    """Downwards convection falls with the power 0.44 of the depth, once it outweighs conduction."""
+    shallow, deep = (1.0 / panel.airspace_resistance(depth, "down", 0.0, difference_k=9.0) for depth in (0.1, 0.3))
+    assert shallow / deep == pytest.approx(3.0**0.44, rel=1e-9)
+
+
 def test_directions_rank_as_they_should():
     films = [panel.inside_film(way) for way in ("up", "horizontal", "down")]
     assert films == sorted(films)
