@@ -14,6 +14,7 @@ from coldbox.physics import panel
 from coldbox.physics.number import Number
 from coldbox.project.model import Construction
 from coldbox.scene import Scene
+from coldbox.scene.draws import matters
 from coldbox.scene.types import Surface
 
 WALK_IN_RULE = "10 CFR 431.306"
@@ -91,7 +92,7 @@ def _could_be_walk_in(scene: Scene) -> bool:
 def _needed(one: Surface, freezer: bool) -> float | None:
     if one.face == "floor":
         return FREEZER_FLOOR_R if freezer else None
-    if np.any(np.greater(one.solar_gain, 0.0)):
+    if matters(one.solar_gain):
         return None
     return FREEZER_R if freezer else COOLER_R
 

@@ -9,14 +9,15 @@ from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, called, day, over_hou
 from coldbox.physics.number import Number
 from coldbox.project.model import Door, Heater
 from coldbox.scene import Scene
+from coldbox.scene.draws import most
 
 
 def entries(scene: Scene, others: list[Entry]) -> list[Entry]:
     """Every entry of the group equipment; `others` is the rest of the account, for what is a declared share of it."""
     project = scene.project
     fixed = [
-        *(_door_heater(door) for door in project.doors if np.any(door.heater > 0)),
-        *(_curtain(door) for door in project.doors if np.any(door.protection_power > 0)),
+        *(_door_heater(door) for door in project.doors if most(door.heater) > 0),
+        *(_curtain(door) for door in project.doors if most(door.protection_power) > 0),
         *(_heater(heater) for heater in project.heaters if heater.power is not None),
     ]
     rest = _rest([*others, *fixed])
@@ -35,7 +36,7 @@ def _rest(entries: list[Entry]) -> Number:
 def _fans(scene: Scene, rest: Number) -> Entry | None:
     """Fans run all day but for the defrosts; before any are named they are a declared share of the rest."""
     machine = scene.project.machine
-    if np.any(machine.fans > 0):
+    if most(machine.fans) > 0:
         stopped = defrost_seconds(scene)
         watts = machine.fans * machine.fan_power * (1.0 - stopped / SECONDS_A_DAY)
         return _steady(
@@ -49,7 +50,7 @@ def _fans(scene: Scene, rest: Number) -> Entry | None:
                 Input(key="stopped_s_per_day", label="stopped a day", value=stopped, kind="duration"),
             ),
         )
-    if not np.any(machine.fan_share > 0):
+    if most(machine.fan_share) <= 0:
         return None
     return _steady(
         "fans",

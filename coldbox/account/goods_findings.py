@@ -9,7 +9,6 @@ import numpy as np
 from coldbox.account.entry import Finding
 from coldbox.project.model import Limit, Lot
 from coldbox.scene import Scene
-from coldbox.scene.goods import goods
 
 COLD_HOLDING_C = 5.0  # FDA Food Code 3-501.16
 PERISHABLE = ("meat", "fish", "dairy")
@@ -24,9 +23,9 @@ def findings(scene: Scene) -> Iterator[Finding]:
 
 
 def _injury(lot: Lot, room: float) -> Iterator[Finding]:
-    kind = goods(lot)
-    freezing = None if kind.freezing_point_c is None else float(np.mean(kind.freezing_point_c))
-    if kind.lives and freezing is not None and room < freezing:
+    lives = bool(lot.respiration)
+    freezing = None if lot.freezing_point is None else float(np.mean(lot.freezing_point))
+    if lives and freezing is not None and room < freezing:
         yield Finding(
             level="danger",
             id="freezing-injury",
@@ -35,7 +34,6 @@ def _injury(lot: Lot, room: float) -> Iterator[Finding]:
             path=f"lots.{lot.name}",
         )
     elif lot.safe_above_c is not None and room < float(np.mean(lot.safe_above_c)):
-        lives = kind.lives
         yield Finding(
             level="caution" if lives else "danger",
             id="chilling-injury" if lives else "too-cold",

@@ -15,6 +15,7 @@ from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Door, Ventilation
 from coldbox.scene import Air, Scene
 from coldbox.scene.air import from_humidity_ratio
+from coldbox.scene.draws import most
 from coldbox.tables.load import row, rows
 
 SPENT = "upper bound: one opening exchanges more than the room holds, and what follows meets air no longer cold"
@@ -44,9 +45,9 @@ def _air_of(scene: Scene, name: str) -> Air:
 def _through_doors(scene: Scene) -> Iterator[Entry]:
     for door in scene.project.doors:
         share = open_share(door)
-        if np.any(share > 0.0):
+        if most(share) > 0.0:
             yield _traffic(scene, door, share)
-        if np.any(door.gasket_leakage > 0.0):
+        if most(door.gasket_leakage) > 0.0:
             yield _gasket(scene, door, share)
 
 
@@ -118,7 +119,7 @@ def _closed_share(scene: Scene) -> FloatArray:
 def _leakage(scene: Scene) -> Iterator[Entry]:
     rate = scene.project.box.leakage.per_second
     name = leak_neighbour(scene)
-    if not (np.any(rate > 0.0) and name) or _gaskets_say_it(scene):
+    if not (most(rate) > 0.0 and name) or _gaskets_say_it(scene):
         return
     closed = _closed_share(scene)
     yield _changes(
@@ -139,7 +140,7 @@ def _leakage(scene: Scene) -> Iterator[Entry]:
 def _gaskets_say_it(scene: Scene) -> bool:
     """Whether leakage is told by the doors' gaskets: then a default rate for the whole box would count it twice."""
     origin = scene.project.origins.get("box.leakage")
-    told = any(np.any(door.gasket_leakage > 0.0) for door in scene.project.doors)
+    told = any(most(door.gasket_leakage) > 0.0 for door in scene.project.doors)
     return told and origin is not None and origin.kind == "default"
 
 

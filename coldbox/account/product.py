@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
+from math import ceil
+
 import numpy as np
 
 from coldbox.account.entry import Entry, Input
 from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, SECONDS_AN_HOUR, day, steady_mean
-from coldbox.errors import OutOfValidity
 from coldbox.physics import moist_air
 from coldbox.physics.number import FloatArray, Number
+from coldbox.physics.validity import within
 from coldbox.project.model import Lot
 from coldbox.scene import Scene
+from coldbox.scene.draws import matters, most
 from coldbox.scene.goods import Goods, goods
 from coldbox.tables.load import row
 
@@ -23,10 +26,11 @@ def entries(scene: Scene) -> list[Entry]:
     found: list[Entry] = []
     for lot in scene.project.lots:
         kind = goods(lot)
-        if np.any(lot.arrives > 0):
-            found.append(_intake(scene, lot, kind))
-            if lot.packaging != "none" and np.any(lot.packaging_mass > 0):
-                found.append(_packaging(scene, lot))
+        if most(lot.arrives) > 0:
+            shares = _pulldown_shares(lot)
+            found.append(_intake(scene, lot, kind, shares))
+            if lot.packaging != "none" and most(lot.packaging_mass) > 0:
+                found.append(_packaging(scene, lot, shares))
         if kind.lives:
             found += [entry for entry in (_respiration(scene, lot, kind), _transpiration(scene, lot)) if entry]
     return found
@@ -43,23 +47,19 @@ def removed_share(elapsed: FloatArray, pulldown: Number, chilling_factor: Number
     Source: ASHRAE Handbook, Refrigeration, chapter Refrigerated-facility loads, chilling-rate factor (from memory);
     the shape behind the peak is ours.
     """
-    if np.any(np.less(chilling_factor, 0.5)) or np.any(np.greater(chilling_factor, 1.0)):
-        worst = (
-            float(np.min(chilling_factor)) if np.any(np.less(chilling_factor, 0.5)) else float(np.max(chilling_factor))
-        )
-        raise OutOfValidity("the chilling-rate factor", worst, 0.5, 1.0, "", "The pull-down profile")
+    within(chilling_factor, 0.5, 1.0, quantity="the chilling-rate factor", unit="", method="The pull-down profile")
     flat = 2.0 * chilling_factor - 1.0
-    passed = np.clip(elapsed / pulldown, 0.0, 1.0)
+    passed = np.minimum(np.maximum(elapsed / pulldown, 0.0), 1.0)
     late = np.maximum(passed - flat, 0.0)
-    falling = np.where(flat < 1.0, late * late / (2.0 * np.where(flat < 1.0, 1.0 - flat, 1.0)), 0.0)
-    share: FloatArray = (passed - falling) / chilling_factor
+    # Where nothing falls (f = 1), late is nought throughout, and what it is divided by makes no difference.
+    share: FloatArray = (passed - late * late / np.maximum(2.0 - 2.0 * flat, 1e-12)) / chilling_factor
     return share
 
 
 def _clock_edges(lot: Lot, parts: int) -> tuple[FloatArray, int]:
     """Seconds since arrival at the edges of every part of an hour, from midnight of the day of arrival until the
     pull-down is over: (days x 24 x parts + 1,), and the number of days."""
-    days = int(np.ceil((lot.arrival_time * SECONDS_AN_HOUR + float(np.max(lot.pulldown))) / SECONDS_A_DAY))
+    days = int(ceil((lot.arrival_time * SECONDS_AN_HOUR + most(lot.pulldown)) / SECONDS_A_DAY))
     hours = np.arange(days * 24 * parts + 1) / parts
     return (hours - lot.arrival_time) * SECONDS_AN_HOUR, days
 
@@ -76,7 +76,7 @@ def _pulldown_shares(lot: Lot) -> FloatArray:
     return _folded(np.diff(removed_share(edges, lot.pulldown, lot.chilling_factor), axis=-1), days)
 
 
-def _intake(scene: Scene, lot: Lot, kind: Goods) -> Entry:
+def _intake(scene: Scene, lot: Lot, kind: Goods, shares: FloatArray) -> Entry:
     room = scene.room.temperature_c
     warm = _arrival_temperature(lot)
     per_kg = kind.enthalpy(warm) - kind.enthalpy(room)
@@ -85,7 +85,7 @@ def _intake(scene: Scene, lot: Lot, kind: Goods) -> Entry:
         id=f"lots.{lot.name}.intake",
         group="product",
         label=f"{lot.name}, coming in",
-        sensible_w=day(daily / SECONDS_AN_HOUR * _pulldown_shares(lot)),
+        sensible_w=day(daily / SECONDS_AN_HOUR * shares),
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,
         method=kind.method,
@@ -108,7 +108,7 @@ def _arrival_temperature(lot: Lot) -> Number:
     return lot.arrival_temperature
 
 
-def _packaging(scene: Scene, lot: Lot) -> Entry:
+def _packaging(scene: Scene, lot: Lot, shares: FloatArray) -> Entry:
     specific_heat = float(str(row("packaging", lot.packaging)["specific_heat"]))
     warm, room = _arrival_temperature(lot), scene.room.temperature_c
     daily = lot.packaging_mass * specific_heat * (warm - room)
@@ -116,7 +116,7 @@ def _packaging(scene: Scene, lot: Lot) -> Entry:
         id=f"lots.{lot.name}.packaging",
         group="product",
         label=f"{lot.name}, {lot.packaging}",
-        sensible_w=day(daily / SECONDS_AN_HOUR * _pulldown_shares(lot)),
+        sensible_w=day(daily / SECONDS_AN_HOUR * shares),
         latent_w=NOTHING,
         moisture_kg_per_day=0.0,
         method="specific heat",
@@ -140,11 +140,11 @@ def _respiration(scene: Scene, lot: Lot, kind: Goods) -> Entry | None:
         Input(key="room_c", label="t_room", value=room, kind="temperature"),
         Input(key="heat_w_per_kg", label="w(t_room)", value=resting, kind="specific_power"),
     ]
-    if np.any(lot.arrives > 0):
+    if most(lot.arrives) > 0:
         cooling = _respiration_while_cooling(lot, kind, room)
         watts = watts + cooling
         inputs.append(Input(key="cooling_w", label="today's intake, mean", value=steady_mean(cooling), kind="power"))
-    if not np.any(watts):
+    if not matters(watts):
         return None
     return Entry(
         id=f"lots.{lot.name}.respiration",
@@ -180,7 +180,7 @@ def _running(elapsed: FloatArray, pulldown: Number) -> FloatArray:
 
 
 def _transpiration(scene: Scene, lot: Lot) -> Entry | None:
-    if not (np.any(lot.transpiration > 0) and np.any(lot.stored > 0)):
+    if not (most(lot.transpiration) > 0 and most(lot.stored) > 0):
         return None
     room = scene.room
     deficit = moist_air.saturation_pressure(room.temperature_c) * np.maximum(1.0 - room.relative_humidity, 0.0)

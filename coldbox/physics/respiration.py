@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from typing import Final
 
@@ -33,18 +34,18 @@ def heat(at_c: Sequence[Number] | FloatArray, w_per_kg: Sequence[Number] | Float
     0.02
     """
     _check(at_c, w_per_kg)
-    low, high = np.subtract(at_c[0], BELOW_K), np.add(at_c[-1], ABOVE_K)
-    for outside in (np.less(temperature_c, low - 1e-9), np.greater(temperature_c, high + 1e-9)):
-        if np.any(outside):
-            worst = float(np.broadcast_to(temperature_c, outside.shape)[outside].flat[0])
-            raise OutOfValidity(
-                "temperature", worst, float(np.max(low)), float(np.min(high)), "°C", "Respiration by these points"
-            )
-    logs = [np.log(value) for value in w_per_kg]
-    slopes = [(logs[i + 1] - logs[i]) / np.subtract(at_c[i + 1], at_c[i]) for i in range(len(at_c) - 1)]
-    line = logs[0] + slopes[0] * np.subtract(temperature_c, at_c[0])
+    low, high = at_c[0] - BELOW_K, at_c[-1] + ABOVE_K
+    beyond = np.greater(np.maximum(low - temperature_c, temperature_c - high), 1e-9)
+    if beyond.any():
+        worst = float(np.broadcast_to(temperature_c, beyond.shape)[beyond].flat[0])
+        raise OutOfValidity(
+            "temperature", worst, float(np.max(low)), float(np.min(high)), "°C", "Respiration by these points"
+        )
+    logs = [math.log(value) if isinstance(value, float) else np.log(value) for value in w_per_kg]
+    slopes = [(logs[i + 1] - logs[i]) / (at_c[i + 1] - at_c[i]) for i in range(len(at_c) - 1)]
+    line = logs[0] + slopes[0] * (temperature_c - at_c[0])
     for i in range(1, len(slopes)):
-        line = line + (slopes[i] - slopes[i - 1]) * np.maximum(np.subtract(temperature_c, at_c[i]), 0.0)
+        line = line + (slopes[i] - slopes[i - 1]) * np.maximum(temperature_c - at_c[i], 0.0)
     result: Number = np.exp(line)
     return result
 
@@ -93,10 +94,10 @@ def _check(at_c: Sequence[Number] | FloatArray, w_per_kg: Sequence[Number] | Flo
     name = "Respiration by points"
     if len(at_c) < 2 or len(at_c) != len(w_per_kg):
         raise OutOfValidity("the number of points", float(min(len(at_c), len(w_per_kg))), 2.0, np.inf, "", name)
-    for before, after in zip(at_c[:-1], at_c[1:], strict=True):
-        step = np.min(np.subtract(after, before))
-        if not step > 0.0:
-            raise OutOfValidity("the step from point to point", float(step), 0.0, np.inf, "K", name)
+    for i in range(1, len(at_c)):
+        step = at_c[i] - at_c[i - 1]
+        if not (step > 0.0 if isinstance(step, float) else np.all(step > 0.0)):
+            raise OutOfValidity("the step from point to point", float(np.min(step)), 0.0, np.inf, "K", name)
     for value in w_per_kg:
-        if not np.all(np.greater(value, 0.0)):
+        if not (value > 0.0 if isinstance(value, float) else np.all(np.greater(value, 0.0))):
             raise OutOfValidity("the heat at a point", float(np.min(value)), 0.0, np.inf, "W/kg", name)

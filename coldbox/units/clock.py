@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
 from typing import Literal, NamedTuple
 
 import numpy as np
@@ -22,16 +23,22 @@ class Schedule(NamedTuple):
     spans: tuple[Span, ...]
 
     def shares(self) -> NDArray[np.float64]:
-        """Mean share in each clock hour, (24,)."""
-        hours = np.arange(24.0)
-        total = np.zeros(24)
-        for start, end, share in self.spans:
-            total += share * np.clip(np.minimum(end, hours + 1) - np.maximum(start, hours), 0.0, 1.0)
-        return total
+        """Mean share in each clock hour, (24,), read-only: one array serves all who ask."""
+        return _shares(self.spans)
 
     def hours_per_day(self) -> float:
         """Full-share hours in a day."""
         return float(self.shares().sum())
+
+
+@lru_cache(maxsize=256)
+def _shares(spans: tuple[Span, ...]) -> NDArray[np.float64]:
+    hours = np.arange(24.0)
+    total = np.zeros(24)
+    for start, end, share in spans:
+        total += share * np.clip(np.minimum(end, hours + 1) - np.maximum(start, hours), 0.0, 1.0)
+    total.flags.writeable = False
+    return total
 
 
 ALWAYS = Schedule((Span(0.0, 24.0, 1.0),))
