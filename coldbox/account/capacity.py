@@ -35,9 +35,9 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
 
     max(daily heat / running hours, peak demand) x (1 + safety). The peak demand is taken without defrost heat: the
     coil is off while it defrosts, and what the defrost leaves behind is in the daily heat that the running hours carry
-    away. Negative entries count only with `credit_cold`. A box with an ATP class is sized by the agreement's rule
-    instead: at least 1.75 (1.35 where unit and body were tested together) times the heat through the walls at +30 °C
-    outside and the lowest temperature of its class.
+    away. Negative entries count only with `credit_cold`. A box with an ATP class also needs what the agreement asks at
+    least: 1.75 (1.35 where unit and body were tested together) times the heat through the walls at +30 °C outside and
+    the lowest temperature of its class. That rule knows no doors and no warm goods, so it never lowers the answer.
 
     ua_w_per_k: W/K, float or (draws, 1). Result in W and J a day.
     Source: trade practice for running hours and safety; ATP, annex 1.
@@ -49,7 +49,9 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
     by_daily = daily_j / _flat(project.sizing.run_hours) * margin
     by_peak = peak_w * margin
     by_atp = _atp(project, ua_w_per_k)
-    required = np.maximum(by_daily, by_peak) if by_atp is None else by_atp
+    candidates: dict[Literal["daily", "peak", "atp"], Number] = {"daily": by_daily, "peak": by_peak}
+    if by_atp is not None:
+        candidates["atp"] = by_atp
     return Capacity(
         counted_daily_j=daily_j,
         cold_w=-cold.mean(axis=-1),
@@ -58,8 +60,8 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
         by_daily_w=by_daily,
         by_peak_w=by_peak,
         by_atp_w=by_atp,
-        required_w=required,
-        governs="atp" if by_atp is not None else ("daily" if np.mean(by_daily) > np.mean(by_peak) else "peak"),
+        required_w=np.maximum.reduce(list(candidates.values())),
+        governs=max(candidates, key=lambda name: float(np.mean(candidates[name]))),
     )
 
 

@@ -60,10 +60,16 @@ def test_cold_is_credited_only_on_request():
 
 @pytest.mark.parametrize(("rule", "outside_less_class"), [("atp-a", 30.0), ("atp-b", 40.0), ("atp-c", 50.0)])
 @pytest.mark.parametrize(("together", "factor"), [(False, 1.75), (True, 1.35)])
-def test_the_transport_rule_replaces_the_other_two(rule, outside_less_class, together, factor):
+def test_the_transport_rule_asks_for_its_multiple_of_the_walls(rule, outside_less_class, together, factor):
     sized = capacity(project(rules=(rule,), tested_with_unit=together), [entry("flat", np.full(24, 100.0))], 12.0)
     assert sized.governs == "atp"
     assert sized.required_w == pytest.approx(factor * 12.0 * outside_less_class)
+
+
+def test_the_transport_rule_never_lowers_what_the_day_asks():
+    sized = capacity(project(rules=("atp-c",)), [entry("busy", np.full(24, 5000.0))], 12.0)
+    assert sized.governs == "daily" and sized.by_atp_w == pytest.approx(1.75 * 12.0 * 50.0)
+    assert sized.required_w == pytest.approx(sized.by_daily_w)
 
 
 @given(
