@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from functools import reduce
 from typing import Literal
 
 import numpy as np
@@ -60,7 +61,7 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
         by_daily_w=by_daily,
         by_peak_w=by_peak,
         by_atp_w=by_atp,
-        required_w=np.maximum.reduce(list(candidates.values())),
+        required_w=reduce(np.maximum, candidates.values()),
         governs=max(candidates, key=lambda name: float(np.mean(candidates[name]))),
     )
 
