@@ -17,7 +17,7 @@ MODULES = sorted(path.stem for path in FOLDER.glob("*.py") if path.stem != "__in
 # Words by which a docstring may say what a figure is measured in: a unit, or that it has none.
 UNITS = re.compile(
     r"°|\bK\b|\bm\b|m²|m³|\bW\b|W/|\bJ\b|J/|kg|\bPa\b|\bs\b|1/s|\bh\b|hours?|minutes|months?|degrees|share|number|count|"
-    r"unit|0\.\.1|1\.\.12|\bday\b|word|whether|emissivit|absorptance|directions?\b|names?\b"
+    r"unit|0\.\.1|0 to 1|1\.\.12|\bday\b|word|whether|emissivit|absorptance|directions?\b|names?\b"
 )
 
 

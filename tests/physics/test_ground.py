@@ -63,7 +63,7 @@ def test_walls_widen_the_rectangle_all_round():
 @pytest.mark.parametrize("thick", [0.6, 1.0, 2.0, 4.0, 8.0])
 @pytest.mark.parametrize("soil, capacity", [(1.5, 3.0e6), (2.0, 2.0e6), (3.5, 2.0e6)])
 def test_the_years_wave_against_two_dimensions(thick, soil, capacity):
-    """The standard's simple annex: never below the solution, at most 40 % above, within 0.4 month of its lag."""
+    """The standard's simple annex: never below the solution, at most 40 % above, its lag 0.1 to 0.4 month later."""
     half, wall = 6.0, 0.3
     storage = 2j * np.pi / 3.15e7 * capacity
     resistance = (thick - wall) / soil - 0.04
@@ -72,7 +72,7 @@ def test_the_years_wave_against_two_dimensions(thick, soil, capacity):
     ours = ground.periodic_amplitude_u(1.0, thick, soil, capacity)
     assert abs(per_edge) < ours < 1.4 * abs(per_edge)
     lag = -np.angle(per_edge) / (2 * np.pi) * 12
-    assert ground.periodic_lag(thick, soil, capacity) == pytest.approx(lag, abs=0.4)
+    assert 0.1 < ground.periodic_lag(thick, soil, capacity) - lag < 0.4
 
 
 def test_penetration_depth_is_where_the_wave_has_fallen():
