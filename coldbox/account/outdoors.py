@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from itertools import groupby
 from typing import TypeVar
 
 import numpy as np
@@ -15,8 +16,8 @@ from coldbox.scene import Scene
 from coldbox.scene.draws import matters, stack
 from coldbox.scene.types import Surface, Weather
 
-# Heat through a panel moves by its U times this, 1 µW/m² at most; the fourth power is exact long before.
-_TOLERANCE_K = 1e-6
+# Heat through a panel moves by its U times this, some µW/m²; each round of the balance gains a digit or more.
+_TOLERANCE_K = 1e-5
 _ZERO = float(constants.ZERO_CELSIUS)
 _SIGMA = float(constants.STEFAN_BOLTZMANN)
 Scalar = TypeVar("Scalar", np.float64, np.complex128)
@@ -25,7 +26,7 @@ Scalar = TypeVar("Scalar", np.float64, np.complex128)
 class Outdoors(Record):
     """Outdoor surfaces stacked on the first axis, then draws (or 1), then hours (or 1)."""
 
-    surfaces: tuple[Surface, ...]
+    surfaces: tuple[Surface, ...]  # those that share their layers side by side
     plain_w: FloatArray  # into the room without sun
     sun_w: FloatArray  # what the sun adds
     surface_c: FloatArray  # outside surface, in the sun
@@ -56,55 +57,49 @@ def solve(scene: Scene, surfaces: Sequence[Surface]) -> Outdoors:
     """Heat through outdoor surfaces by the balance of each outside surface and periodic conduction behind it.
 
     The sun's part is the heat with sun less the heat without; through glass it is g (1 - shade) I A.
-    All surfaces are solved in one call, those that absorb sun twice. Joints and allowance follow the outside surface
+    All surfaces are solved in one call, with sun and without. Joints and allowance follow the outside surface
     without delay.
     """
     weather = scene.weather
     assert weather is not None, "nothing outdoors without a site"
-    count = len(surfaces)
+    surfaces = _by_layers(surfaces)
     incident = _incident(weather, surfaces)
     lets_in = stack([one.solar_gain for one in surfaces])
     falls = (1.0 - stack([one.shade for one in surfaces])) * incident
     absorbed = np.where(lets_in > 0.0, 0.0, stack([one.absorptance for one in surfaces])) * falls
-    sunny = [place for place in range(count) if absorbed[place].any()]
-    rows = [*range(count), *sunny]
-    emissivity = stack([one.emissivity for one in surfaces])[rows]
-    sky_share = np.asarray(surface.sky_view(stack([one.tilt for one in surfaces])))[rows]
+    sunny = bool(absorbed.any())
+    emissivity = stack([one.emissivity for one in surfaces])
+    sky_share = surface.sky_view(stack([one.tilt for one in surfaces]))
     convection = surface.wind_convection(weather.wind)
-    taken = np.concatenate([np.zeros_like(absorbed), absorbed[sunny]])
     air_c = weather.air.temperature_c
     balanced = surface.balance(
         air_c=air_c,
         sky_c=weather.sky_c,
-        absorbed=taken,
+        absorbed=np.stack([np.zeros_like(absorbed), absorbed]) if sunny else absorbed[None],
         emissivity=emissivity,
         sky_share=sky_share,
         convection=convection,
         room_c=scene.room.temperature_c,
-        panel=_responses(surfaces, rows),
+        panel=_responses(surfaces),
         tolerance_k=_TOLERANCE_K,
     )
+    # On the first axis: without sun, and with it where there is any.
     outside = stack([one.outside_area for one in surfaces])
-    heat = outside[rows] * balanced.inside_w_per_m2
-    plain, surface_c = heat[:count], balanced.surface_c[:count]
-    mean_surface = surface_c.mean(axis=-1, keepdims=True)
-    added = np.zeros_like(plain)
-    if sunny:
-        surface_c = surface_c.copy()
-        surface_c[sunny] = balanced.surface_c[count:]
-        added[sunny] = heat[count:] - plain[sunny]
+    surface_c = balanced.surface_c[-1]
+    plain = outside * balanced.inside_w_per_m2[0]
+    added = outside * balanced.inside_w_per_m2[1] - plain if sunny else np.zeros_like(plain)
     if matters(lets_in):
-        added = added + lets_in * falls * stack([one.area for one in surfaces])
+        added += lets_in * falls * stack([one.area for one in surfaces])
     warmest = surface_c.mean(axis=1).argmax(axis=-1)
-    each = np.arange(count)
+    each = np.arange(len(surfaces))
     own = surface_c[each, :, warmest][..., None]
     sol_air = _sol_air(
         own + _ZERO,
         _at(air_c, warmest) + _ZERO,
         _at(weather.sky_c, warmest) + _ZERO,
         absorbed[each, :, warmest][..., None],
-        emissivity[:count] * _SIGMA,
-        sky_share[:count],
+        emissivity * _SIGMA,
+        sky_share,
         convection,
     )
     over = surface_c - weather.air.dew_point_c
@@ -114,7 +109,7 @@ def solve(scene: Scene, surfaces: Sequence[Surface]) -> Outdoors:
         plain_w=plain,
         sun_w=added,
         surface_c=surface_c,
-        mean_surface_c=mean_surface,
+        mean_surface_c=balanced.surface_c[0].mean(axis=-1, keepdims=True),
         peak_surface_c=own,
         peak_sol_air_c=sol_air - _ZERO,
         peak_incident=incident.max(axis=-1, keepdims=True),
@@ -132,30 +127,34 @@ def response(one: Surface, outside_film: Number | None = None) -> periodic.Respo
     return _scaled(answer, one.effective_area / one.outside_area, one.extra_w_per_k / one.outside_area)
 
 
-def _responses(surfaces: Sequence[Surface], rows: list[int]) -> periodic.Response:
-    """The panels behind the surfaces, stacked in the order of `rows`; panels that share their layers share the work.
+def _by_layers(surfaces: Sequence[Surface]) -> list[Surface]:
+    """The surfaces with those that share their layers side by side."""
+    groups: dict[int, list[Surface]] = {}
+    for one in surfaces:
+        groups.setdefault(id(one.sheets), []).append(one)
+    return [one for group in groups.values() for one in group]
+
+
+def _responses(surfaces: Sequence[Surface]) -> periodic.Response:
+    """The panels behind the surfaces, stacked; neighbours that share their layers share the work.
 
     Layers and inside film are taken per m² of layers, and the answer is then given per m² of outside surface.
     """
-    groups: dict[int, list[int]] = {}
-    for place, one in enumerate(surfaces):
-        groups.setdefault(id(one.sheets), []).append(place)
-    order: list[int] = []
     answers: list[periodic.Response] = []
-    for places in groups.values():
-        members = [surfaces[place] for place in places]
+    for _, group in groupby(surfaces, key=lambda one: id(one.sheets)):
+        members = list(group)
         film = stack([one.inside_film * one.effective_area / one.area for one in members])
         scale = stack([one.effective_area / one.outside_area for one in members])
         beside = stack([one.extra_w_per_k / one.outside_area for one in members])
         answers.append(_scaled(periodic.response(members[0].sheets, film), scale, beside))
-        order += places
-    back = np.argsort(order)[rows]
+    if len(answers) == 1:
+        return answers[0]
     draws = max(one.transfer.shape[1] for one in answers)
 
     def together(parts: list[NDArray[Scalar]]) -> NDArray[Scalar]:
         if draws > 1:
             parts = [np.broadcast_to(one, (one.shape[0], draws, one.shape[2])) for one in parts]
-        return np.concatenate(parts)[back]
+        return np.concatenate(parts)
 
     return periodic.Response(
         u=together([np.asarray(one.u) for one in answers]),

@@ -40,7 +40,7 @@ def envelope(scene: Scene) -> Envelope:
     open_air = [one for one in surfaces if one.behind == "outdoors" and one.id not in floors]
     hourly = scene.project.box.sun == "hourly"
     solved = outdoors.solve(scene, open_air) if open_air and hourly else None
-    places = {one.id: place for place, one in enumerate(open_air)}
+    places = {one.id: place for place, one in enumerate(open_air if solved is None else solved.surfaces)}
     around = _outdoor_and_room(scene) if open_air else ()
     entries: list[Entry] = []
     for one in surfaces:

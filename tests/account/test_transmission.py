@@ -312,3 +312,15 @@ def test_outdoors_the_outside_follows_the_solved_balance():
     assert found["ceiling"].warmest_c > 55.0
     assert 32.0 < found["back"].warmest_c < 45.0
     assert found["ceiling"].coldest_c < found["back"].coldest_c < 23.2
+
+
+def test_by_added_degrees_the_outside_lies_below_the_air_by_the_winds_film():
+    project = box_project(box={"sun": "allowance"})
+    scene = build(project)
+    found = {one.id: one for one in envelope(scene).surfaces}["back"]
+    one = surface_of(scene, "back")
+    assert one.outside_film < 0.5 * one.inside_film
+    air = scene.weather.air.temperature_c
+    drop = bodies.conductance(one) * one.outside_film / one.outside_area
+    assert found.coldest_c == pytest.approx((air - drop * (air + 18.0)).min())
+    assert found.over_dew_point_k == pytest.approx((air - drop * (air + 18.0) - scene.weather.air.dew_point_c).min())
