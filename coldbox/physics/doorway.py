@@ -91,7 +91,8 @@ def let_through(effectivenesses: Iterable[Number]) -> Number:
 
     Π (1 - ε)
 
-    effectivenesses: ε of each, 0 to 1, broadcasting; else OutOfValidity. Result: 0 to 1, 1 for no protection.
+    effectivenesses: ε of each, a share from 0 to 1, broadcasting; else OutOfValidity. Result: a share from 0 to 1, 1
+    for no protection.
     Source: ASHRAE Refrigeration, Refrigerated-facility loads, doorway protective devices (copy).
     """
     share: Number = 1.0

@@ -304,7 +304,8 @@ def natural_films(
 
     outside_c, inside_c: air, °C. resistance: R of the layers, m²K/W. length: m, `facing`: as for `natural_convection`;
     both sides of a horizontal panel face alike: a cold room's ceiling is stable on both, its floor unstable.
-    Emissivities against surroundings at air temperature. pressure: Pa. All but `facing` broadcast.
+    outside_emissivity, inside_emissivity: ε against surroundings at air temperature. pressure: Pa. All but `facing`
+    broadcast.
     Result: Films, to 1e-9 of each film. Raises OutOfValidity from the correlation, NoRoot when it does not settle.
     Source: `natural_convection`, Stefan-Boltzmann law.
     """
