@@ -6,7 +6,7 @@ import re
 import tomllib
 
 from coldbox.errors import Problem
-from coldbox.project.linemap import Key, LineMap
+from coldbox.project.linemap import DOTS, Key, LineMap, refuse_deep_keys
 from coldbox.project.words import clean
 
 _DEEP = 30  # brackets within brackets: the format needs four
@@ -45,6 +45,7 @@ def load(text: str, file: str) -> tuple[dict[str, object], str, list[Problem]]:
     """
     problems: list[Problem] = []
     try:
+        refuse_deep_keys(text)
         return tomllib.loads(text), text, problems
     except tomllib.TOMLDecodeError as first:
         error = first
@@ -58,8 +59,8 @@ def load(text: str, file: str) -> tuple[dict[str, object], str, list[Problem]]:
                 pass  # the first error is told
         problems.append(_told(text, file, error))
     except RecursionError:
-        problems.append(_problem(file, text, _deep_line(text), "Brackets stand in brackets far too deep. Write lists of"
-                                 " plain values, or of tables, as the examples do."))  # fmt: skip
+        problems.append(_problem(file, text, _deep_line(text), "Brackets or keys stand in one another far too deep."
+                                 " Write lists of plain values, or of tables, as the examples do."))  # fmt: skip
     except ValueError:  # an integer with thousands of digits
         line = next((n for n, row in enumerate(text.split("\n"), 1) if re.search(r"\d{4000}", row)), 1)
         problems.append(_problem(file, text, line, "A number with thousands of digits is no quantity. Write a few."))
@@ -126,6 +127,6 @@ def _deep_line(text: str) -> int:
     depth = 0
     for number, row in enumerate(text.split("\n"), 1):
         depth += row.count("[") + row.count("{") - row.count("]") - row.count("}")
-        if depth > _DEEP or row.count("[") > _DEEP or row.count("{") > _DEEP:
+        if depth > _DEEP or row.count("[") > _DEEP or row.count("{") > _DEEP or row.count(".") > DOTS:
             return number
     return 1

@@ -9,7 +9,7 @@ from typing import Any
 from coldbox.errors import Problem
 from coldbox.project import sentences
 from coldbox.project.fields import BY_KEY, TABLES, TOP_TABLES, Field, Table, example
-from coldbox.project.linemap import Key, LineMap
+from coldbox.project.linemap import DOTS, Key, LineMap, refuse_deep_keys
 from coldbox.project.raw import Block, Entered, Raw
 from coldbox.project.setting import OPTION, Option, named, put
 from coldbox.project.values import System, Wrong, from_text, from_toml
@@ -33,6 +33,8 @@ def read(text: str, file: str, options: Mapping[str, str] = {}) -> tuple[Raw, li
     document: dict[str, Any]
     source = text
     try:
+        if text.count(".") > DOTS:
+            refuse_deep_keys(text)
         document = tomllib.loads(text)
     except (ValueError, RecursionError):
         from coldbox.project import broken
@@ -60,11 +62,14 @@ class _Walk:
         self.file, self.lines, self.problems, self.system = file, lines, problems, system
         self.untold = 0
 
+    def full(self) -> bool:
+        return len(self.problems) >= MOST_PROBLEMS
+
     def problem(self, sentence: str, path: str, key: Key) -> None:
-        if len(self.problems) >= MOST_PROBLEMS:
+        if self.full():
             self.untold += 1
             return
-        self.problems.append(Problem(sentence, file=self.file, line=self.lines.line(key), path=path))
+        self.problems.append(Problem(sentence, file=self.file, line=self.lines.line(key) if key else 1, path=path))
 
     # Tables
 
@@ -145,7 +150,8 @@ class _Walk:
             field = declared.get(word)
             here, there = f"{before}{word}", (*key, word)
             if field is None:
-                self.problem(sentences.unknown(table, word, value, path), f"{before}{clean(word)}", there)
+                sentence = "" if self.full() else sentences.unknown(table, word, value, path)
+                self.problem(sentence, f"{before}{clean(word)}", there)
             elif field.structural and not isinstance(value, Option):
                 children[word] = self.blocks(TABLES[f"{table}.{word}"], value, here, there)
             elif word == "construction" and isinstance(value, dict):

@@ -18,6 +18,22 @@ _ESCAPES = {"b": "\b", "t": "\t", "n": "\n", "f": "\f", "r": "\r", "e": "\x1b", 
 _HEX = {"x": 2, "u": 4, "U": 8}
 
 
+DOTS = 40  # in one key; the format needs three
+
+
+def refuse_deep_keys(text: str) -> None:
+    """Raise RecursionError for a key of more than `DOTS` parts: `tomllib` takes their number squared, and hours."""
+    for row in text.split("\n"):
+        if row.count(".") <= DOTS:
+            continue
+        run = 0
+        for part in row.split("."):
+            word = part.strip(" \t[]{\"'").replace("-", "_")
+            run = run + 1 if word and word.replace("_", "a").isalnum() else 0
+            if run > DOTS:
+                raise RecursionError
+
+
 class LineMap:
     """The places of one text, found on the first question.
 
@@ -154,7 +170,7 @@ class _Scan:
         begin, text = self.pos, self.text
         equals = text.find("=", begin)
         word = text[begin:equals].rstrip(_BLANK)
-        if word.isidentifier() and word.isascii():  # nearly every key; the others take the long way
+        if equals > 0 and word.isidentifier() and word.isascii():  # nearly every key; the others take the long way
             dotted = [(*base, word)]
         else:
             path = base

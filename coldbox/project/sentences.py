@@ -55,10 +55,11 @@ def unknown(table: str, word: str, value: Any, path: str) -> str:
         header = {"one": f"[{near}]", "named": f"[{near}.NAME]", "list": f"[[{near}]]"}[TABLES[near].form]
         return f"[{found}] is no table of a project. Nearest: {header}."
     sentence = f'"{found}" is no key {f"of {path}" if table else "above the tables"}.'
-    near = nearest(word, BY_KEY[table] if table else (*BY_KEY[""], *TOP_TABLES))
+    known = BY_KEY[table] if table else (*BY_KEY[""], *TOP_TABLES)
+    elsewhere = declared_in(word)
+    near = nearest(word, known, 0.8 if elsewhere else 0.55)
     if near:
         return f'{sentence} Nearest: "{near}".'
-    elsewhere = declared_in(word)
     if elsewhere:
         return f"{sentence} It belongs to {elsewhere}."
     return f"{sentence} They are: {', '.join(BY_KEY[table])}."

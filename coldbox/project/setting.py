@@ -28,13 +28,16 @@ def named(table: Table, items: list[Any]) -> list[str]:
     typed = [_word(item, "name") for item in items]
     if not table.named_after:
         return typed
-    kinds = [name or _word(item, table.named_after) for name, item in zip(typed, items, strict=True)]
+    choices = BY_KEY[table.name][table.named_after].choices
+    kinds = [name or _word(item, table.named_after, choices) for name, item in zip(typed, items, strict=True)]
     return [name or (kind if kinds.count(kind) == 1 else "") for name, kind in zip(typed, kinds, strict=True)]
 
 
-def _word(item: Any, key: str) -> str:
+def _word(item: Any, key: str, choices: tuple[str, ...] = ()) -> str:
     word = item.get(key) if isinstance(item, dict) else None
-    return str(word) if isinstance(word, str) and fault_of_name(word) is None else ""
+    if not isinstance(word, str) or fault_of_name(word) is not None or (choices and word not in choices):
+        return ""
+    return str(word)
 
 
 def put(document: dict[str, Any], options: Mapping[str, str]) -> list[Problem]:
@@ -104,7 +107,9 @@ def _head(path: str) -> tuple[str, str]:
 def _enter(parent: Any, key: str, table: Table, rest: str, at: str, made: _Made) -> tuple[Any, str, str]:
     """Into a table: the node to put into (None where the file is wrong there), what is left of the path, the way."""
     if not rest:
-        raise _Nowhere(f"{clean(at)} is a table. Name one of its keys, such as {_such_as(table, at)}.")
+        raise _Nowhere(
+            f"{clean(at)} is a table. Name one of its keys, such as {_such_as(table, at, {'one': '', 'named': '.NAME', 'list': '[1]'}[table.form])}."
+        )
     if table.form == "one":
         return _node(parent, key, made), rest.removeprefix("."), at
     if table.form == "named":
@@ -131,11 +136,10 @@ def _enter(parent: Any, key: str, table: Table, rest: str, at: str, made: _Made)
     return item if isinstance(item, dict) else None, rest, at
 
 
-def _such_as(table: Table, at: str) -> str:
+def _such_as(table: Table, at: str, which: str = "") -> str:
     keys = list(BY_KEY[table.name])
     key = next((key for key in keys if key not in ("name", "notes", "library")), keys[0])
-    middle = {"one": "", "named": ".NAME", "list": "[1]"}[table.form] if at == table.name else ""
-    return f"{clean(at)}{middle}.{key}"
+    return f"{clean(at)}{which}.{key}"
 
 
 def _node(parent: Any, key: str, made: _Made) -> Any:

@@ -69,8 +69,9 @@ def _bare(field: Field, value: object, source: str, system: System) -> _Found:
         return _number(field, value, shown, system)
     if isinstance(value, (int, float, dict, list)):
         raise Wrong(f"{shown} stands where {_label(field)} is due. {advice(field)}")
-    quotes = f'Put it in quotes: {field.key} = "{clean(source)}".'  # dates and clock times, the only kinds left
-    raise Wrong(f"{shown} is a bare date or time. {quotes}")
+    if field.kind in ("count", "number", "yes_no"):  # dates and clock times are the only kinds left
+        raise Wrong(f"{shown} is a date or time, not {_label(field)}. {advice(field)}")
+    raise Wrong(f'{shown} stands without quotes. Put it in quotes: {field.key} = "{shown}".')
 
 
 def split(text: str) -> list[str]:
@@ -188,7 +189,7 @@ def _number(field: Field, value: int | float, shown: str, system: System) -> _Fo
         if isinstance(value, float) and kind == "month":
             raise Wrong(f"{shown} is not a month. {advice(field)}")
         _check(field, value, kind, shown, system)
-        return value if kind == "month" else float(value), kind, None, None
+        return (value if kind == "month" else float(value)), kind, None, None
     if kind in ("text", "name", "word"):
         raise Wrong(f"{shown} is a number where {_label(field)} is due. {advice(field)}")
     try:
@@ -203,7 +204,7 @@ def _check(field: Field, value: Any, kind: str, shown: str, system: System) -> N
     size = value.per_second if isinstance(value, Rate) else value
     if not isinstance(size, (int, float)):
         return  # hours: they carry no size
-    if not math.isfinite(size):
+    if isinstance(size, float) and not math.isfinite(size):
         raise Wrong(f"{shown} is no number to compute with. {advice(field)}")
     if kind != field.kind:
         if size < 0:

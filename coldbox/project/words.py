@@ -21,12 +21,12 @@ def clean(text: str, longest: int = _QUOTED) -> str:
     return "".join(sign if sign.isprintable() else f"\\u{ord(sign):04x}" for sign in shown)
 
 
-def nearest(word: str, known: Iterable[str]) -> str | None:
-    """The known word closest to this one, or None when none is close."""
+def nearest(word: str, known: Iterable[str], likeness: float = 0.55) -> str | None:
+    """The known word closest to this one, or None when none is close; `likeness` runs from 0 to 1, the same word."""
     from difflib import get_close_matches
 
     folded = {one.casefold(): one for one in known}
-    close = get_close_matches(word[:LONGEST_NAME].casefold(), folded, n=1, cutoff=0.55)
+    close = get_close_matches(word[:LONGEST_NAME].casefold(), folded, n=1, cutoff=likeness)
     return folded[close[0]] if close else None
 
 

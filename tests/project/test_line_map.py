@@ -197,6 +197,18 @@ def test_any_text_ends(text: str) -> None:
     _agrees(text)
 
 
+@pytest.mark.parametrize("path", BOXES, ids=lambda path: path.stem)
+def test_a_file_cut_anywhere_is_mapped_up_to_the_cut(path: Path) -> None:
+    text = path.read_text("utf-8")
+    whole = LineMap(text).spots
+    for cut in range(11, len(text), 11):
+        spots = LineMap(text[:cut]).spots
+        before = {key: spot for key, spot in whole.items() if spot[2] < cut and text[spot[2]] == "\n"}
+        assert {key: spot for key, spot in spots.items() if key in before} == before
+        for broken in (text[:cut] + text[cut + 1 :], text[:cut] + "]" + text[cut:], text[:cut] + '"' + text[cut:]):
+            assert ("format",) in LineMap(broken).spots, "it ends, whatever is wrong"
+
+
 def test_sub_tables_of_blocks() -> None:
     text = '[[trip.stops]]\n[[trip.stops.deliver]]\nlot = "a"\n[[trip.stops]]\n[trip.stops.x]\nb.c = 1\n'
     _agrees(text)
