@@ -11,7 +11,7 @@ from coldbox.scene import air
 from coldbox.scene.types import SunDay, Weather
 
 # Share of the daily range by which the air lies below the day's highest, at the full hours 0:00 to 23:00 of sun time.
-# ASHRAE Handbook, Fundamentals 1997, chapter 28, table 2 (from memory).
+# Source ashrae-f-daily-profile: Fundamentals 1997, chapter 28, table 2 (from memory).
 _BELOW_HIGHEST = np.array([
     0.82, 0.87, 0.92, 0.96, 0.99, 1.00, 0.98, 0.93, 0.84, 0.71, 0.56, 0.39,
     0.23, 0.11, 0.03, 0.00, 0.03, 0.10, 0.21, 0.34, 0.47, 0.58, 0.68, 0.76,
