@@ -107,9 +107,8 @@ def _head(path: str) -> tuple[str, str]:
 def _enter(parent: Any, key: str, table: Table, rest: str, at: str, made: _Made) -> tuple[Any, str, str]:
     """Into a table: the node to put into (None where the file is wrong there), what is left of the path, the way."""
     if not rest:
-        raise _Nowhere(
-            f"{clean(at)} is a table. Name one of its keys, such as {_such_as(table, at, {'one': '', 'named': '.NAME', 'list': '[1]'}[table.form])}."
-        )
+        which = {"one": "", "named": ".NAME", "list": "[1]"}[table.form]
+        raise _Nowhere(f"{clean(at)} is a table. Name one of its keys, such as {_such_as(table, at, which)}.")
     if table.form == "one":
         return _node(parent, key, made), rest.removeprefix("."), at
     if table.form == "named":
