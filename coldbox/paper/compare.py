@@ -11,7 +11,7 @@ from coldbox.account.entry import GROUPS, Load
 from coldbox.paper.data import Json
 from coldbox.paper.document import Block, Column, Document, Heading, Paragraph, Table
 from coldbox.paper.load import GROUP_WORDS, figure
-from coldbox.project.model import Project
+from coldbox.project.model import Origin, Project
 
 System = Literal["SI", "IP"]
 
@@ -65,19 +65,27 @@ def _held_against(value: float, first: float, kind: str, system: System) -> str:
 
 
 def differences(projects: list[Project]) -> Iterator[tuple[str, ...]]:
-    """Rows of key path and each project's own text, for every input that is not the same in all."""
-    texts = [_inputs(project) for project in projects]
-    paths = dict.fromkeys(path for inputs in texts for path in inputs)
+    """Rows of key path and each project's own text, for every input that somebody set and that is not the same in all.
+
+    What only follows from it (a construction's layers out of the library, a default) is not listed.
+    """
+    paths = dict.fromkeys(
+        path for project in projects for path, origin in project.origins.items() if _set(path, origin)
+    )
     for path in paths:
-        row = [inputs.get(path, "-") for inputs in texts]
+        row = [_text(project, path) for project in projects]
         if len(set(row)) > 1:
             yield (path, *row)
 
 
-def _inputs(project: Project) -> dict[str, str]:
-    """What was typed or taken from a library or default, by key path, as text."""
-    skipped = ("name", "notes", "customer", "by", "format")
-    return {path: origin.text for path, origin in project.origins.items() if path not in skipped and origin.text}
+def _set(path: str, origin: Origin) -> bool:
+    told = ("name", "notes", "customer", "by", "format")
+    return origin.kind in ("typed", "option") and path not in told and not path.endswith((".notes", ".library"))
+
+
+def _text(project: Project, path: str) -> str:
+    origin = project.origins.get(path)
+    return origin.text if origin is not None and origin.text else "-"
 
 
 def as_json(heads: list[str], loads: list[Load]) -> dict[str, Json]:

@@ -67,8 +67,9 @@ def _fields(table: str | None) -> Iterator[Block]:
         yield Heading(text=f"{section.header}: {section.help}", level=1 if number == 0 else 2)
         for row in section.rows:
             bounds = f", {row.bounds}" if row.bounds else ""
-            yield Paragraph(text=f"{row.example}", indent=1)
-            yield Paragraph(text=f"{row.help} {row.kind}{bounds}. If absent: {row.needed}.", indent=3)
+            needed = "Required." if row.needed == "required" else f"If absent: {row.needed}."
+            yield Paragraph(text=row.example, indent=1)
+            yield Paragraph(text=f"{row.help} Takes {row.kind}{bounds}. {needed}", indent=2)
 
 
 def checked(results: list[CheckResult]) -> Document:
