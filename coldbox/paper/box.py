@@ -9,18 +9,12 @@ import numpy as np
 
 from coldbox.account.entry import Load
 from coldbox.project.model import Box, Project, Site
-from coldbox.units import show
+from coldbox.units import compass_point, show
 
 MONTHS = (
     "January", "February", "March", "April", "May", "June",
     "July", "August", "September", "October", "November", "December",
 )  # fmt: skip
-POINTS = ("N", "NE", "E", "SE", "S", "SW", "W", "NW")
-
-
-def compass(degrees: float) -> str:
-    """The nearest of eight compass points."""
-    return POINTS[round(degrees / 45.0) % 8]
 
 
 def box_lines(load: Load, system: Literal["SI", "IP"]) -> Iterator[str]:
@@ -44,7 +38,7 @@ def _sizes(box: Box, system: Literal["SI", "IP"]) -> str:
         return (
             f"Box of {show(_mean(box.volume), 'volume', system)}, floor {show(_mean(box.floor_area), 'area', system)}."
         )
-    front = f" (front {compass(_mean(box.bearing))})" if box.bearing is not None else ""
+    front = f" (front {compass_point(_mean(box.bearing))})" if box.bearing is not None else ""
     notch = ", L-shaped" if box.notch_length is not None else ""
     return (
         f"Box {length(box.width)} wide{front}, {length(box.length)} deep, {length(box.height)} high"
