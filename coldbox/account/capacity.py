@@ -55,7 +55,7 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
         candidates["atp"] = by_atp
     return Capacity(
         counted_daily_j=daily_j,
-        cold_w=-cold.mean(axis=-1),
+        cold_w=0.0 - cold.mean(axis=-1),
         peak_hour=int(np.argmax(peak_demand.reshape(-1, 24).mean(axis=0))),
         peak_w=peak_w,
         by_daily_w=by_daily,

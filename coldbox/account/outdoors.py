@@ -4,10 +4,9 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from itertools import groupby
-from typing import TypeVar
+from typing import TYPE_CHECKING, TypeVar
 
 import numpy as np
-from numpy.typing import NDArray
 
 from coldbox.physics import constants, periodic, sun, surface
 from coldbox.physics.number import FloatArray, Number
@@ -15,6 +14,9 @@ from coldbox.record import Record
 from coldbox.scene import Scene
 from coldbox.scene.draws import matters, stack
 from coldbox.scene.types import Surface, Weather
+
+if TYPE_CHECKING:
+    from numpy.typing import NDArray
 
 # Heat through a panel moves by its U times this, some µW/m²; each round of the balance gains a digit or more.
 _TOLERANCE_K = 1e-5

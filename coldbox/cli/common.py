@@ -5,7 +5,6 @@ from __future__ import annotations
 import argparse
 import os
 import sys
-from pathlib import Path
 from typing import TYPE_CHECKING, Literal
 
 from coldbox.errors import BadProject, Problem
@@ -71,14 +70,28 @@ def columns() -> int:
 
 
 def print_json(value: object) -> None:
-    """A value as JSON on standard output."""
+    """A value as JSON on standard output: a key or an item a line, two levels deep."""
     import json
 
-    sys.stdout.write(json.dumps(value, ensure_ascii=False, indent=1, allow_nan=False) + "\n")
+    # Without `indent` json works in C; with it, in Python, which would cost as much as the account itself.
+    encode = json.JSONEncoder(ensure_ascii=False, allow_nan=False).encode
+
+    def lines(one: object, levels: int) -> str:
+        if levels and isinstance(one, dict) and one:
+            inside = ",\n".join(
+                f"{' ' * (3 - levels)}{encode(key)}: {lines(item, levels - 1)}" for key, item in one.items()
+            )
+            return f"{{\n{inside}\n{' ' * (2 - levels)}}}"
+        if levels and isinstance(one, list) and one and isinstance(one[0], dict):
+            inside = ",\n".join(f"{' ' * (3 - levels)}{lines(item, 0)}" for item in one)
+            return f"[\n{inside}\n{' ' * (2 - levels)}]"
+        return encode(one)
+
+    sys.stdout.write(lines(value, 2) + "\n")
 
 
 def write_text(path: str, text: str) -> None:
     """A result into a file, whole or not at all."""
     from coldbox.project import store
 
-    store.write_text(Path(path), text)
+    store.write_text(path, text)

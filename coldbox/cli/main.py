@@ -28,7 +28,8 @@ examples:
   coldbox load projects/shed.toml     every watt, and the capacity
   coldbox sources --fields            every key a project file may hold
 
-Exit status: 0 done; 1 done, and something of this box is dangerous; 2 bad input or usage; 3 a fault of the program."""
+Exit status: 0 done; 1 done, and something of this box is dangerous;
+2 bad input or usage; 3 a fault of the program."""
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
@@ -40,35 +41,45 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return stop.code if isinstance(stop.code, int) else BAD_INPUT
 
 
-def _parser(chosen: str | None) -> argparse.ArgumentParser:
-    """The parser; only the chosen command's own module is imported."""
+class _Help(argparse.RawDescriptionHelpFormatter):
+    """Help as wide as the terminal, which argparse by itself asks with modules that cost more than all of its own."""
+
+    def __init__(self, prog: str) -> None:
+        from coldbox.cli.common import columns
+
+        super().__init__(prog, width=columns() - 2)
+
+
+def _parser() -> argparse.ArgumentParser:
+    """What is asked when no command stands first: its help lists them, and no command's module is imported."""
+    lines = "\n".join(f"  {name:<8}  {line}" for name, line in COMMANDS.items())
     parser = argparse.ArgumentParser(
         prog="coldbox",
-        description="Heat gain and refrigeration capacity of cold rooms and insulated boxes.",
+        usage="coldbox [-h] [--version] command ...",
+        description=f"Heat gain and refrigeration capacity of cold rooms and insulated boxes.\n\ncommands:\n{lines}",
         epilog=EXAMPLES,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
+        formatter_class=_Help,
     )
     parser.add_argument("--version", action="version", version=f"coldbox {__version__}")
-    commands = parser.add_subparsers(dest="command", metavar="command", title="commands")
-    for name, line in COMMANDS.items():
-        sub = commands.add_parser(
-            name, help=line, description=line, formatter_class=argparse.RawDescriptionHelpFormatter
-        )
-        if name == chosen:
-            module = import_module(f"coldbox.cli.{name}")
-            sub.epilog = module.EXAMPLES
-            module.arguments(sub)
-            sub.set_defaults(run=module.run)
+    parser.add_argument("command", nargs="?", help="one of the above; coldbox COMMAND --help says more")
     return parser
 
 
+def _command(name: str, rest: list[str]) -> argparse.Namespace:
+    """The options of one command; only its own module is imported."""
+    module = import_module(f"coldbox.cli.{name}")
+    parser = argparse.ArgumentParser(
+        prog=f"coldbox {name}", description=COMMANDS[name], epilog=module.EXAMPLES, formatter_class=_Help
+    )
+    module.arguments(parser)
+    parser.set_defaults(run=module.run)
+    return parser.parse_args(rest)
+
+
 def _guarded(given: list[str]) -> int:
-    chosen = next((word for word in given if not word.startswith("-")), None)
-    parser = _parser(chosen if chosen in COMMANDS else None)
-    options = parser.parse_args(given)
-    if options.command is None:
-        parser.print_help(sys.stderr)
-        return BAD_INPUT
+    if not given or given[0] not in COMMANDS:
+        return _without_command(given)
+    options = _command(given[0], given[1:])
     try:
         status: int = options.run(options)
         sys.stdout.flush()
@@ -87,6 +98,20 @@ def _guarded(given: list[str]) -> int:
         return BAD_INPUT
     except Exception as error:
         return _fault(error)
+
+
+def _without_command(given: list[str]) -> int:
+    parser = _parser()
+    word = parser.parse_args(given[:1]).command
+    if word is None:
+        parser.print_help(sys.stderr)
+    else:
+        from difflib import get_close_matches
+
+        near = get_close_matches(word, COMMANDS, 1)
+        hint = f' Nearest: "{near[0]}".' if near else ""
+        print(f'coldbox: "{word}" is no command.{hint} There are: {", ".join(COMMANDS)}.', file=sys.stderr)
+    return BAD_INPUT
 
 
 def _fault(error: Exception) -> int:

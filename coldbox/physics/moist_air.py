@@ -7,14 +7,17 @@ asks for some dozen states of air, and numpy costs ten times as much for one num
 from __future__ import annotations
 
 import math
+from typing import TYPE_CHECKING
 
 import numpy as np
-from numpy.typing import NDArray
 
 from coldbox.errors import NoRoot, OutOfValidity
 from coldbox.physics import constants
 from coldbox.physics.number import FloatArray, Number
 from coldbox.physics.validity import within
+
+if TYPE_CHECKING:
+    from numpy.typing import NDArray
 
 _ZERO = float(constants.ZERO_CELSIUS)
 _GAS = float(constants.GAS_CONSTANT_DRY_AIR)

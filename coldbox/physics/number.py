@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
-import numpy as np
-from numpy.typing import NDArray
+from typing import Any
 
-FloatArray = NDArray[np.float64]
+import numpy as np
+
+# Written out, not NDArray: numpy.typing costs a millisecond to import.
+FloatArray = np.ndarray[tuple[Any, ...], np.dtype[np.float64]]
 Number = float | FloatArray

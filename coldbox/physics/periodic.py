@@ -9,17 +9,16 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Sequence
 from types import EllipsisType
-from typing import Protocol, TypeVar
+from typing import Any, Protocol, TypeVar
 
 import numpy as np
-from numpy.typing import NDArray
 
 from coldbox.errors import OutOfValidity
 from coldbox.physics.number import FloatArray, Number
 from coldbox.physics.validity import within
 from coldbox.record import Record
 
-ComplexArray = NDArray[np.complex128]
+ComplexArray = np.ndarray[tuple[Any, ...], np.dtype[np.complex128]]
 Operand = TypeVar("Operand", Number, ComplexArray)
 Part = tuple[EllipsisType | slice, ...]
 WHOLE: Part = (...,)

@@ -11,7 +11,6 @@ import errno
 import os
 import stat
 from collections.abc import Mapping
-from difflib import get_close_matches
 from typing import TYPE_CHECKING
 
 from coldbox.errors import BadProject, FileTrouble, Problem
@@ -21,6 +20,7 @@ if TYPE_CHECKING:
 
 LIMIT_BYTES = 1_000_000  # the largest example is under 10 kB: more is no project file
 PREVIOUS = ".previous"
+_MARK = b"\xef\xbb\xbf"  # byte-order mark
 
 _REASONS = {
     errno.EACCES: "you may not {do} it.",
@@ -46,6 +46,8 @@ def _absent(file: str) -> FileTrouble:
         there = [entry for entry in os.listdir(folder or ".") if entry.endswith(".toml")]
     except OSError:
         return FileTrouble(file, f'there is no folder "{folder}".')
+    from difflib import get_close_matches  # only a name that is not there pays for it
+
     near = get_close_matches(name, there, n=1, cutoff=0.6) or get_close_matches(name + ".toml", there, n=1, cutoff=0.6)
     hint = f' Nearest: "{os.path.join(folder, near[0])}".' if near else ""
     return FileTrouble(file, f"there is no such file.{hint}")
@@ -79,7 +81,7 @@ def read_text(path: str | os.PathLike[str]) -> str:
     if len(data) > LIMIT_BYTES:
         raise _too_large(file, len(data))
     try:
-        return data.decode("utf-8-sig")
+        return data.removeprefix(_MARK).decode("utf-8")
     except UnicodeDecodeError as error:
         line = data.count(b"\n", 0, error.start) + 1
         said = f"Byte 0x{data[error.start]:02x} is not UTF-8 text. Save the file as UTF-8."

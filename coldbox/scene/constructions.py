@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from typing import Any
 
 import numpy as np
-from numpy.typing import NDArray
 
 from coldbox.errors import OutOfValidity
 from coldbox.physics import panel
@@ -15,7 +15,7 @@ from coldbox.project.model import Construction, Layer
 from coldbox.scene.draws import least, matters
 from coldbox.scene.types import Sheet
 
-Mask = bool | np.bool_ | NDArray[np.bool_]
+Mask = bool | np.bool_ | np.ndarray[tuple[Any, ...], np.dtype[np.bool_]]
 
 OUTSIDE_FILM = 0.04
 QUOTED_FILMS = 0.13 + OUTSIDE_FILM  # in a quoted u_value, m²K/W (ISO 6946)

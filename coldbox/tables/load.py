@@ -6,22 +6,25 @@ and parses only that. So in these files a line that starts with `[` at its very 
 
 from __future__ import annotations
 
+import os
 import tomllib
 from collections.abc import Mapping
 from functools import cache
-from pathlib import Path
 from types import MappingProxyType
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from coldbox.errors import TableFault, UnknownName
 from coldbox.tables import columns
 
+if TYPE_CHECKING:
+    from pathlib import Path  # with all it imports it costs six milliseconds
+
 Row = Mapping[str, Any]  # what each column holds is declared in `columns` and checked before anybody sees the row
 
-FOLDER = Path(__file__).parent
+FOLDER = os.path.dirname(__file__)
 
 
-def row(table: str, name: str, folder: Path = FOLDER) -> Row:
+def row(table: str, name: str, folder: str | Path = FOLDER) -> Row:
     """One row of a table, by its name or another name it goes by (`also`).
 
     table: file name without its ending. name: as written there. Returns the columns, numbers as float, read-only.
@@ -31,22 +34,22 @@ def row(table: str, name: str, folder: Path = FOLDER) -> Row:
     return _row(table, name, folder)
 
 
-def rows(table: str, folder: Path = FOLDER) -> Mapping[str, Row]:
+def rows(table: str, folder: str | Path = FOLDER) -> Mapping[str, Row]:
     """Every row of a table by name, in the order of the file. Raises UnknownName and TableFault as `row` does."""
     return _rows(table, folder)
 
 
-def names(table: str, folder: Path = FOLDER) -> tuple[str, ...]:
+def names(table: str, folder: str | Path = FOLDER) -> tuple[str, ...]:
     """The names of a table's rows, in the order of the file; parses nothing. Raises UnknownName."""
     return tuple(_name(line) for line in _text(table, folder).split("\n") if line.startswith("["))
 
 
-def aliases(table: str, folder: Path = FOLDER) -> Mapping[str, str]:
+def aliases(table: str, folder: str | Path = FOLDER) -> Mapping[str, str]:
     """Other names of a table's rows, each with the name of its row. Raises UnknownName."""
     return _aliases(table, folder)
 
 
-def figures(table: str, column: str, folder: Path = FOLDER) -> Mapping[str, float]:
+def figures(table: str, column: str, folder: str | Path = FOLDER) -> Mapping[str, float]:
     """One number column of a whole table by row name, read off the text without parsing it or checking the rows.
 
     For searches over a long table, such as the nearest place. Rows without the column are left out.
@@ -64,12 +67,12 @@ def figures(table: str, column: str, folder: Path = FOLDER) -> Mapping[str, floa
     return found
 
 
-def source(key: str, folder: Path = FOLDER) -> Row:
+def source(key: str, folder: str | Path = FOLDER) -> Row:
     """Title, place and how it was read of a source. Raises UnknownName."""
     return _row("sources", key, folder)
 
 
-def sources(folder: Path = FOLDER) -> Mapping[str, Row]:
+def sources(folder: str | Path = FOLDER) -> Mapping[str, Row]:
     """Every source by its key."""
     return _rows("sources", folder)
 
@@ -80,17 +83,18 @@ def tables() -> tuple[str, ...]:
 
 
 @cache
-def _text(table: str, folder: Path) -> str:
+def _text(table: str, folder: str | Path) -> str:
     if table != "sources" and table not in columns.COLUMNS:
         raise UnknownName("tables", table, _nearest(table, tables()))
     try:
-        return (folder / f"{table}.toml").read_text(encoding="utf-8")
+        with open(os.path.join(folder, f"{table}.toml"), encoding="utf-8") as file:
+            return file.read()
     except OSError as trouble:
         raise TableFault(table, "all", f"cannot be read: {trouble.strerror}") from trouble
 
 
 @cache
-def _row(table: str, name: str, folder: Path) -> Row:
+def _row(table: str, name: str, folder: str | Path) -> Row:
     block = _block(table, name, folder)
     if block is None:
         other = _aliases(table, folder).get(name)
@@ -105,7 +109,7 @@ def _row(table: str, name: str, folder: Path) -> Row:
 
 
 @cache
-def _rows(table: str, folder: Path) -> Mapping[str, Row]:
+def _rows(table: str, folder: str | Path) -> Mapping[str, Row]:
     try:
         content = tomllib.loads(_text(table, folder))
     except tomllib.TOMLDecodeError as trouble:
@@ -114,7 +118,7 @@ def _rows(table: str, folder: Path) -> Mapping[str, Row]:
 
 
 @cache
-def _aliases(table: str, folder: Path) -> Mapping[str, str]:
+def _aliases(table: str, folder: str | Path) -> Mapping[str, str]:
     found: dict[str, str] = {}
     head = ""
     for line in _text(table, folder).split("\n"):
@@ -125,7 +129,7 @@ def _aliases(table: str, folder: Path) -> Mapping[str, str]:
     return MappingProxyType(found)
 
 
-def _block(table: str, name: str, folder: Path) -> str | None:
+def _block(table: str, name: str, folder: str | Path) -> str | None:
     """The text of one row with its head, or None."""
     text = "\n" + _text(table, folder)
     heads = (f'\n["{name}"]\n', f"\n[{name}]\n")
@@ -140,7 +144,7 @@ def _name(head: str) -> str:
     return head.strip().removeprefix("[").removesuffix("]").strip('"')
 
 
-def _checked(table: str, name: str, values: object, folder: Path) -> Row:
+def _checked(table: str, name: str, values: object, folder: str | Path) -> Row:
     """The row as callers get it, if it keeps to the declaration of its table."""
     if not isinstance(values, dict):
         raise TableFault(table, name, "is no row")

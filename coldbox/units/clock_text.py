@@ -35,7 +35,9 @@ MOST_STRETCHES = 24
 def read_clock(text: str) -> float:
     """Hours since midnight of the first day: "14:00" is 14.0, "day 2 06:00" is 30.0, "2:30 pm" is 14.5."""
     day = 1
-    first, last = re.match(_DAY_FIRST, text), re.search(_DAY_LAST, text)
+    first = last = None
+    if "day" in text.lower():
+        first, last = re.match(_DAY_FIRST, text), re.search(_DAY_LAST, text)
     if first:
         day, text = int(first.group(1)), text[first.end() :]
     elif last:
@@ -69,7 +71,7 @@ def read_hours(text: str) -> Schedule:
         return ALWAYS
     if word.startswith("always "):
         return _schedule([Span(0.0, 24.0, _share(text[7:]))])
-    parts = re.split(r"[,;]|\band\b", text)
+    parts = re.split(r"[,;]|\band\b", text) if "," in text or ";" in text or "and" in text else [text]
     if len(parts) > MOST_STRETCHES:
         raise Refused(f"has more than {MOST_STRETCHES} stretches")
     spans: list[Span] = []

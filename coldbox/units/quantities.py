@@ -110,7 +110,7 @@ def _compound(text: str, kind: Kind) -> float:
 
 
 def _wrong_kind(written: str, kind: Kind, dims: Dims) -> str:
-    if re.search(r"\btons?\b", written, re.IGNORECASE) and "refrig" not in written:
+    if "ton" in written.lower() and re.search(r"\btons?\b", written, re.IGNORECASE) and "refrig" not in written:
         return TON_OF_WHAT
     if kind.dims == TIME and written == "m":
         return 'has "m", which is metres (write "min" for minutes)'
@@ -162,7 +162,8 @@ def _rate(text: str, kind: Kind, bare: str | None) -> Part:
         raise Refused("has no unit")
     if written.casefold() in ("ach", "air changes", "air changes an hour"):
         written = "/h"
-    written = re.sub(_COUNTED, "", written, count=1)
+    if not written.startswith(("/", "1/")):
+        written = re.sub(_COUNTED, "", written, count=1)
     if not written.startswith(("/", "1/", "per ", "a ", "an ")) and "^-1" not in written:
         raise Refused(f'has "{written}" where "/h" or "/day" should stand')
     factor, dims = unit(written if written[0] != "a" else "/" + written.split(" ", 1)[1])
@@ -174,7 +175,9 @@ def _rate(text: str, kind: Kind, bare: str | None) -> Part:
 def _daily_duration(text: str, kind: Kind, bare: str | None) -> Part:
     value, end = read_number(text)
     written = text[end:].strip() or plain(bare or "")
-    upper, stroke, lower = re.sub(r" ?\bper\b ?| an? ", "/", written).partition("/")
+    if " " in written or "per" in written:
+        written = re.sub(r" ?\bper\b ?| an? ", "/", written)
+    upper, stroke, lower = written.partition("/")
     if not stroke:
         raise Refused("has no unit" if not written else "does not say per what")
     (above, of), (below, per) = unit(upper.strip()), unit(lower.strip())

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import tomllib
 from collections import Counter
+from pathlib import Path
 
 import pytest
 
@@ -13,7 +14,7 @@ TABLES = (*load.tables(), "sources")
 
 
 def test_every_file_has_its_declaration_and_every_declaration_its_file():
-    assert {file.stem for file in load.FOLDER.glob("*.toml")} == set(TABLES)
+    assert {file.stem for file in Path(load.FOLDER).glob("*.toml")} == set(TABLES)
 
 
 @pytest.mark.parametrize("table", TABLES)
@@ -25,7 +26,7 @@ def test_every_row_is_sound(table):
 @pytest.mark.parametrize("table", TABLES)
 def test_a_single_row_reads_as_in_the_whole_table(table):
     """The text search for one row finds exactly what the whole file holds, row for row."""
-    text = (load.FOLDER / f"{table}.toml").read_text(encoding="utf-8")
+    text = (Path(load.FOLDER) / f"{table}.toml").read_text(encoding="utf-8")
     assert load.names(table) == tuple(tomllib.loads(text))
     for name, values in load.rows(table).items():
         assert load.row(table, name) == values
