@@ -112,9 +112,9 @@ def test_things_without_a_name_are_numbered_or_called_after_what_they_are() -> N
 
 def test_a_name_used_twice() -> None:
     door = '[[doors]]\nname = "main"\nwidth = "1 m"\nheight = "2 m"\n'
-    problem = one(f"format = 1\n{BOX}{door}{door}")
-    assert (problem.line, problem.path) == (9, "doors[2].name")
-    assert '"main"' in problem.text and "line 5" in problem.text
+    problem = one(f"format = 1\n{BOX}{door.replace('main', 'side')}{door}{door}")
+    assert (problem.line, problem.path) == (13, "doors[3].name")
+    assert '"main"' in problem.text and "line 9" in problem.text
 
 
 def test_a_table_used_twice() -> None:

@@ -71,7 +71,8 @@ def test_a_value_is_put_where_the_path_says(text: str, path: str, typed: str, th
 
 
 def test_names_with_points_are_found() -> None:
-    text = f'{LEAST}[constructions."pir 0.1 m"]\nr_value = "RSI 4"\n[constructions.pir]\nr_value = "RSI 4"\n'
+    """Of two names that a path may begin with, the longer one is meant."""
+    text = f'{LEAST}[constructions."pir 0"]\nr_value = "RSI 4"\n[constructions."pir 0.1 m"]\nr_value = "RSI 4"\n'
     raw = with_option(text, "constructions.pir 0.1 m.thickness", "100 mm")
     assert value_at(raw, "constructions.pir 0.1 m.thickness") == 0.1
 
