@@ -38,8 +38,7 @@ def box(work: Work, block: Block | None, walls: Walls) -> tuple[Box, Common]:
     """The box, and what it says for all its faces."""
     reader = Reader(work, "box", block.path if block else "box", block)
     sizes = _sizes(reader)
-    temperature = reader.given("temperature")
-    temperature = math.nan if temperature is None else temperature  # the reading of the file says so
+    temperature = reader.need("temperature", 'Write the temperature it is held at, such as "4 °C".')
     what, usual = by_room("room_humidity", temperature)
     k_value, thickness = reader.given("k_value"), reader.given("thickness")
     construction = walls.of(reader)
