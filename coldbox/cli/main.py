@@ -7,9 +7,13 @@ import os
 import sys
 from collections.abc import Sequence
 from importlib import import_module
+from typing import TYPE_CHECKING
 
 from coldbox import __version__
 from coldbox.errors import ColdboxError
+
+if TYPE_CHECKING:
+    from _typeshed import SupportsWrite
 
 DONE, CROSSED, BAD_INPUT, FAULT = 0, 1, 2, 3
 
@@ -36,54 +40,11 @@ def main(arguments: Sequence[str] | None = None) -> int:
     """Run one command and return its exit status."""
     given = list(sys.argv[1:] if arguments is None else arguments)
     try:
-        return _guarded(given)
-    except SystemExit as stop:
-        return stop.code if isinstance(stop.code, int) else BAD_INPUT
-
-
-class _Help(argparse.RawDescriptionHelpFormatter):
-    """Help as wide as the terminal, which argparse by itself asks with modules that cost more than all of its own."""
-
-    def __init__(self, prog: str) -> None:
-        from coldbox.cli.common import columns
-
-        super().__init__(prog, width=columns() - 2)
-
-
-def _parser() -> argparse.ArgumentParser:
-    """What is asked when no command stands first: its help lists them, and no command's module is imported."""
-    lines = "\n".join(f"  {name:<8}  {line}" for name, line in COMMANDS.items())
-    parser = argparse.ArgumentParser(
-        prog="coldbox",
-        usage="coldbox [-h] [--version] command ...",
-        description=f"Heat gain and refrigeration capacity of cold rooms and insulated boxes.\n\ncommands:\n{lines}",
-        epilog=EXAMPLES,
-        formatter_class=_Help,
-    )
-    parser.add_argument("--version", action="version", version=f"coldbox {__version__}")
-    parser.add_argument("command", nargs="?", help="one of the above; coldbox COMMAND --help says more")
-    return parser
-
-
-def _command(name: str, rest: list[str]) -> argparse.Namespace:
-    """The options of one command; only its own module is imported."""
-    module = import_module(f"coldbox.cli.{name}")
-    parser = argparse.ArgumentParser(
-        prog=f"coldbox {name}", description=COMMANDS[name], epilog=module.EXAMPLES, formatter_class=_Help
-    )
-    module.arguments(parser)
-    parser.set_defaults(run=module.run)
-    return parser.parse_args(rest)
-
-
-def _guarded(given: list[str]) -> int:
-    if not given or given[0] not in COMMANDS:
-        return _without_command(given)
-    options = _command(given[0], given[1:])
-    try:
-        status: int = options.run(options)
+        status = _run(given)
         sys.stdout.flush()
         return status
+    except SystemExit as stop:
+        return stop.code if isinstance(stop.code, int) else BAD_INPUT
     except ColdboxError as error:
         print(error, file=sys.stderr)
         return BAD_INPUT
@@ -98,6 +59,54 @@ def _guarded(given: list[str]) -> int:
         return BAD_INPUT
     except Exception as error:
         return _fault(error)
+
+
+class _Help(argparse.RawDescriptionHelpFormatter):
+    """Help as wide as the terminal, which argparse by itself asks with modules that cost more than all of its own."""
+
+    def __init__(self, prog: str) -> None:
+        from coldbox.cli.common import columns
+
+        super().__init__(prog, width=columns() - 2)
+
+
+class _Parser(argparse.ArgumentParser):
+    """A parser whose help goes the way of all results: argparse itself keeps quiet about a full disk."""
+
+    def _print_message(self, message: str, file: SupportsWrite[str] | None = None) -> None:
+        (file or sys.stderr).write(message)
+
+
+def _parser() -> argparse.ArgumentParser:
+    """What is asked when no command stands first: its help lists them, and no command's module is imported."""
+    lines = "\n".join(f"  {name:<8}  {line}" for name, line in COMMANDS.items())
+    parser = _Parser(
+        prog="coldbox",
+        usage="coldbox [-h] [--version] command ...",
+        description=f"Heat gain and refrigeration capacity of cold rooms and insulated boxes.\n\ncommands:\n{lines}",
+        epilog=EXAMPLES,
+        formatter_class=_Help,
+    )
+    parser.add_argument("--version", action="version", version=f"coldbox {__version__}")
+    parser.add_argument("command", nargs="?", help="one of the above; coldbox COMMAND --help says more")
+    return parser
+
+
+def _command(name: str, rest: list[str]) -> argparse.Namespace:
+    """The options of one command; only its own module is imported."""
+    module = import_module(f"coldbox.cli.{name}")
+    parser = _Parser(prog=f"coldbox {name}", description=COMMANDS[name], epilog=module.EXAMPLES, formatter_class=_Help)
+    module.arguments(parser)
+    parser.set_defaults(run=module.run)
+    return parser.parse_args(rest)
+
+
+def _run(given: list[str]) -> int:
+    if not given or given[0] not in COMMANDS:
+        return _without_command(given)
+    options = _command(given[0], given[1:])
+    status: int = options.run(options)
+    return status
 
 
 def _without_command(given: list[str]) -> int:
