@@ -254,6 +254,14 @@ class State:
     carbon_dioxide: FloatArray  # (draw,) kg in the room air
     around: FloatArray  # (draw,) kg in the room around
 
+    def copy(self) -> State:
+        """The same figures in arrays of their own."""
+        made = State()
+        for name in self.__slots__:
+            kept = getattr(self, name)
+            setattr(made, name, [array.copy() for array in kept] if isinstance(kept, list) else kept.copy())
+        return made
+
 
 class Trace(Record):
     """What a run leaves: when limits were used up, extremes, series, the books."""
