@@ -89,7 +89,7 @@ class Problem:
     def __str__(self) -> str:
         place = self.file if self.line is None else f"{self.file}:{self.line}"
         head = "  ".join(part for part in (place, self.path) if part)
-        return f"{head}\n    {self.text}"
+        return f"{head}\n    {self.text}" if head else self.text
 
 
 class BadProject(ColdboxError):

@@ -34,7 +34,9 @@ def set_option(parser: argparse.ArgumentParser) -> None:
 
 def settings(pairs: list[str]) -> dict[str, str]:
     """--set options as key paths and texts. Raises BadProject for one without an equals sign."""
-    wrong = [Problem(f'--set "{pair}" has no value. Write --set KEY=VALUE.') for pair in pairs if "=" not in pair]
+    wrong = [
+        Problem(f'"{pair}" has no value. Write --set KEY=VALUE.', file="--set") for pair in pairs if "=" not in pair
+    ]
     if wrong:
         raise BadProject(wrong)
     return {key.strip(): value.strip() for key, value in (pair.split("=", 1) for pair in pairs)}

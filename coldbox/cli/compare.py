@@ -9,7 +9,7 @@ from coldbox.cli import common
 EXAMPLES = """\
 examples:
   coldbox compare projects/quay.toml projects/shed.toml
-  coldbox compare projects/quay.toml --set 'box.temperature=-22 °C'     the file, and with the change"""
+  coldbox compare projects/quay.toml --set 'box.temperature=-22 °C'"""
 
 
 def arguments(parser: argparse.ArgumentParser) -> None:

@@ -45,10 +45,7 @@ def run(options: argparse.Namespace) -> int:
         from coldbox.paper import load as paper
 
         system = common.system_of(options, project)
-        if options.defaults:
-            document = paper.defaults_document(load)
-        else:
-            document = paper.document(load, system, how=options.how)
+        document = paper.defaults_document(load) if options.defaults else paper.document(load, system, how=options.how)
         if options.markdown:
             from coldbox.paper import markdown
 
