@@ -149,7 +149,7 @@ class Bodies:
         self.lots, self.shape = lots, shape
         self.temperature, self.slope, self.thawed = np.empty(shape), np.empty(shape), np.empty(shape)
         self.conductance = np.empty(shape)  # to the next cell, last: to the air; W/(kg K)
-        self.flow, self.work = np.empty(shape), np.empty(shape)
+        self.work = np.empty(shape)
         self.to_surface = np.empty(shape[1:])  # from the last cell to the surface, W/(kg K)
         self.respired = np.zeros((len(lots.living), draws))
         self.respiration = Respiration(lots)
@@ -184,26 +184,24 @@ class Bodies:
     def outward(self, content: FloatArray, air_c: FloatArray, step_s: float) -> tuple[FloatArray, FloatArray]:
         """Sweep from the core to the surface: the last cell rises by u + v (rise of the air); both (lot, draw)."""
         conductance, temperature, matrix, solved = self.conductance, self.temperature, self._matrix, self._solved
-        flow, work = self.flow, self.work
+        work, flow = self.work, matrix[:, 0]
         np.subtract(temperature[1:], temperature[:-1], out=work[:-1])
         np.subtract(air_c, temperature[-1], out=work[-1])
         work *= conductance
-        flow[:] = work
-        flow[1:] -= work[:-1]
+        flow[0] = work[0]
+        np.subtract(work[1:], work[:-1], out=flow[1:])
         if self.respiration.rows:
             self.respired = self.respiration.add(flow, self.lots.share, temperature)
         np.multiply(flow, step_s * self._per_share, out=work)
         for melting in self._melting:
             own = melting.rows
             melting.lessen(content[:, own], work[:, own], temperature[:, own], self.slope[:, own])
-        matrix[:, 0] = flow
-        diagonal = np.multiply(self.slope, self.lots.share / step_s, out=work)
+        diagonal = matrix[:, 1]
+        np.multiply(self.slope, self.lots.share / step_s, out=diagonal)
         diagonal += conductance
         diagonal[1:] += conductance[:-1]
-        matrix[:, 1] = diagonal
-        matrix[:, 2] = conductance
         # (u, -v) throughout: then both rows of the elimination are one multiplication and one addition.
-        np.negative(matrix[:, 2], out=matrix[:, 2])
+        np.negative(conductance, out=matrix[:, 2])
         pair = self._pair
         np.divide(matrix[0, ::2], matrix[0, 1], out=solved[0])
         for i in range(1, self.shape[0]):

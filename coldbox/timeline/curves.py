@@ -97,6 +97,7 @@ class Melting:
         self.per_above, self.per_below = 1.0 / self.above, 1.0 / self.below
         own = (*shape[:-2], curve.count, shape[-1])
         self.work, self.cold = np.empty(own), np.empty(own)
+        self._thawed = True  # whether anything may be above its freezing point
         self.half = 0.5 / self.below
         self.middle = self.half * (self.below * self.point + self.latent)
         self.root = self.latent * self.point / self.below
@@ -113,7 +114,7 @@ class Melting:
 
     def _update_chen(self, content: FloatArray, temperature: FloatArray, slope: FloatArray, thawed: FloatArray) -> None:
         work = self.work
-        any_warm = content.size > 0 and content.max() > 0.0
+        self._thawed = any_warm = content.size > 0 and bool(content.max() > 0.0)
         cold = np.minimum(content, 0.0, out=self.cold) if any_warm else content
         np.multiply(cold, self.half, out=work)
         work += self.middle
@@ -156,9 +157,12 @@ class Melting:
         if not content.size:
             return
         work, kinked = np.add(content, change, out=self.work), None
-        np.multiply(work, content, out=self.cold)
-        if self.cold.min() < 0.0:
-            kinked = self.cold < 0.0
+        if self._thawed:
+            np.multiply(work, content, out=self.cold)
+            if self.cold.min() < 0.0:
+                kinked = self.cold < 0.0
+        elif work.max() > 0.0:
+            kinked = work > 0.0
         if self.chen:
             if change.min() < self.gentle:
                 far = (content <= 0.0) & (change < FAR * slope * temperature)

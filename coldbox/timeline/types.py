@@ -299,5 +299,5 @@ class Plan(Record):
     signals: Sequence[Signal] = ()
     watches: Sequence[Watch] = ()
     times_s: Sequence[float] = ()  # instants of the series
-    step_s: float = 300.0  # the longest step; whole hours counted from zero are always landed on
+    step_s: float = 600.0  # the longest step; whole hours counted from zero are always landed on
     go_on: Callable[[float], bool] | None = None  # told the share done, now and then; False ends in errors.Stopped
