@@ -6,8 +6,7 @@ stay within what the rules of the file allow, so every one of them is a valid pr
 
 from __future__ import annotations
 
-import random
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from typing import Any, NamedTuple
 
 import boxes
@@ -57,10 +56,11 @@ class Q(NamedTuple):
         return f"{self.value / factor!r}{'' if unit[0] == '/' else ' '}{unit}"
 
 
+Order = Callable[[list[Any]], None]  # what puts a list into another order
 File = dict[str, Any]  # tables by name; a named table is a mapping of blocks, a list of tables a list
 
 
-def written(file: File, system: str = "SI", order: random.Random | None = None) -> str:
+def written(file: File, system: str = "SI", order: Order | None = None) -> str:
     """The file as TOML in SI or IP units; with `order`, tables, blocks and keys in another order."""
     parts = []
     for table, content in _mixed(file["tables"].items(), order):
@@ -75,14 +75,14 @@ def written(file: File, system: str = "SI", order: random.Random | None = None) 
     return f'format = 1\nname = "a box"\nunits = "{system}"\n' + "\n".join(parts)
 
 
-def _mixed(things: Any, order: random.Random | None) -> list[Any]:
+def _mixed(things: Any, order: Order | None) -> list[Any]:
     found = list(things)
     if order is not None:
-        order.shuffle(found)
+        order(found)
     return found
 
 
-def _keys(block: Mapping[str, Any], system: str, order: random.Random | None) -> str:
+def _keys(block: Mapping[str, Any], system: str, order: Order | None) -> str:
     return "".join(f"{key} = {_value(value, system)}\n" for key, value in _mixed(block.items(), order))
 
 
