@@ -8,6 +8,9 @@ from typing import Literal
 from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Project
 from coldbox.record import Record
+from coldbox.scene.finding import Finding
+
+__all__ = ["GROUPS", "Entry", "Finding", "Group", "Input", "Load"]
 
 GROUPS = ("transmission", "sun", "infiltration", "product", "internal", "equipment")
 Group = Literal["transmission", "sun", "infiltration", "product", "internal", "equipment"]
@@ -48,18 +51,6 @@ class Entry(Record):
         """Heat of the day, J, float or (draws,)."""
         total = self.hours_w.sum(axis=-1) * 3600.0
         return float(total) if total.ndim == 0 else total
-
-
-class Finding(Record):
-    """Something a careful colleague would say. `path` is the key path it is about; `standing` cautions never set the
-    exit status."""
-
-    level: Literal["note", "caution", "danger"]
-    id: str
-    text: str
-    rule: str
-    path: str = ""
-    standing: bool = False
 
 
 class Load(Record):
