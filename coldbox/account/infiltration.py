@@ -9,14 +9,19 @@ import numpy as np
 from coldbox.account.air_exchange import denser_volume, entry, exchange
 from coldbox.account.entry import Entry, Input
 from coldbox.account.shapes import SECONDS_A_DAY, SECONDS_AN_HOUR, called, day, over_hours, steady_mean
-from coldbox.errors import OutOfValidity
 from coldbox.physics import doorway, moist_air
-from coldbox.physics.number import FloatArray, Number
+from coldbox.physics.number import FloatArray
 from coldbox.project.model import Door, Ventilation
 from coldbox.scene import Air, Scene
 from coldbox.scene.air import from_humidity_ratio
 from coldbox.scene.draws import most
-from coldbox.tables.load import row, rows
+from coldbox.scene.openings import (
+    closed_share,
+    gaskets_say_it,
+    leak_neighbour,
+    open_share,
+    table_changes_per_day,
+)
 
 SPENT = "upper bound: one opening exchanges more than the room holds, and what follows meets air no longer cold"
 
@@ -30,12 +35,6 @@ def entries(scene: Scene) -> list[Entry]:
     if air == "rate":
         return [*_by_rate(scene), *fresh]
     return [*_through_doors(scene), *_leakage(scene), *fresh]
-
-
-def open_share(door: Door) -> FloatArray:
-    """Share of each clock hour that one such door stands open, (24,) or (draws, 24). Raises OutOfValidity above 1."""
-    passages, stood_open = over_hours(door.passages, door.hours), over_hours(door.stood_open, door.hours)
-    return day(doorway.open_share(passages, door.open_each, stood_open))
 
 
 def _air_of(scene: Scene, name: str) -> Air:
@@ -98,30 +97,12 @@ def _gasket(scene: Scene, door: Door, share: FloatArray) -> Entry:
     )
 
 
-def leak_neighbour(scene: Scene) -> str:
-    """Where leaking air comes from: the richest air behind a door; without doors, behind any face."""
-    doors = [door.neighbour for door in scene.project.doors if door.neighbour in scene.airs]
-    faces = [face.neighbour for face in scene.project.faces.values() if face.neighbour in scene.airs]
-    names = doors or faces
-    if not names:
-        return ""
-    return max(dict.fromkeys(names), key=lambda name: float(np.mean(_air_of(scene, name).enthalpy)))
-
-
-def _closed_share(scene: Scene) -> FloatArray:
-    """Share of each hour in which every door is shut, doors opening apart from each other."""
-    closed = day(1.0)
-    for door in scene.project.doors:
-        closed = closed * (1.0 - open_share(door)) ** door.count
-    return closed
-
-
 def _leakage(scene: Scene) -> Iterator[Entry]:
     rate = scene.project.box.leakage.per_second
     name = leak_neighbour(scene)
-    if not (most(rate) > 0.0 and name) or _gaskets_say_it(scene):
+    if not (most(rate) > 0.0 and name) or gaskets_say_it(scene):
         return
-    closed = _closed_share(scene)
+    closed = closed_share(scene)
     yield _changes(
         scene,
         "leakage",
@@ -135,13 +116,6 @@ def _leakage(scene: Scene) -> Iterator[Entry]:
             Input(key="closed_share", label="closed share, mean", value=steady_mean(closed), kind="share"),
         ),
     )
-
-
-def _gaskets_say_it(scene: Scene) -> bool:
-    """Whether leakage is told by the doors' gaskets: then a default rate for the whole box would count it twice."""
-    origin = scene.project.origins.get("box.leakage")
-    told = any(most(door.gasket_leakage) > 0.0 for door in scene.project.doors)
-    return told and origin is not None and origin.kind == "default"
 
 
 def _by_rate(scene: Scene) -> Iterator[Entry]:
@@ -161,26 +135,6 @@ def _by_rate(scene: Scene) -> Iterator[Entry]:
             Input(key="volume_m3", label="volume", value=scene.body.volume, kind="volume"),
         ),
     )
-
-
-def table_changes_per_day(volume: Number, room_c: Number, use: str) -> Number:
-    """Average air changes in 24 h by room volume, openings and leakage together; straight on logarithmic axes.
-
-    volume: m³. room_c: °C; above and below 0 °C have columns of their own. use: light, average, heavy.
-    Raises OutOfValidity for a volume outside the table. Source: ASHRAE Handbook, Refrigeration, Refrigerated-facility
-    loads, average air changes per 24 hours (from memory).
-    """
-    table = list(rows("air_changes").values())
-    sizes = np.array([float(str(one["volume"])) for one in table])
-    if np.any(np.less(volume, sizes[0])) or np.any(np.greater(volume, sizes[-1])):
-        worst = float(np.min(volume)) if np.any(np.less(volume, sizes[0])) else float(np.max(volume))
-        raise OutOfValidity("the room's volume", worst, sizes[0], sizes[-1], "m³", "The table of air changes")
-    size = np.log(volume)
-    above, below = (
-        np.exp(np.interp(size, np.log(sizes), np.log([float(str(one[column])) for one in table])))
-        for column in ("above_zero", "below_zero")
-    )
-    return np.where(np.less(room_c, 0.0), below, above) * float(str(row("air_use", use)["factor"]))
 
 
 def _by_table(scene: Scene) -> Entry:

@@ -2,14 +2,11 @@
 
 from __future__ import annotations
 
-import numpy as np
-
 from coldbox.account.entry import Entry, Input
 from coldbox.account.shapes import NOTHING, SECONDS_A_DAY, called, day
-from coldbox.physics.number import Number
 from coldbox.project.model import Light, Motor, People
 from coldbox.scene import Scene
-from coldbox.tables.load import row, rows
+from coldbox.scene.inside import heat_of_a_person, share_inside
 
 EVAPORATION_J_PER_KG = 2.5e6  # heat of evaporation near 0 °C, moist-air tables
 
@@ -23,20 +20,6 @@ def entries(scene: Scene) -> list[Entry]:
         *(_motor("motors", motor) for motor in project.motors),
         *(_motor("trucks", truck) for truck in project.trucks),
     ]
-
-
-def heat_of_a_person(room_c: Number) -> tuple[Number, Number, str]:
-    """Heat of one person at work in a cold room, its latent part, and the source's key.
-
-    q = a - b t, the handbook's line; the latent share falls with the temperature (table `people`).
-    room_c: °C, any shape. Returns W, W and text. Source: ASHRAE Handbook, Refrigeration, Refrigerated-facility loads.
-    """
-    line = row("people", "heat by room temperature")
-    total = float(str(line["at_zero_w"])) - float(str(line["fall_w_per_k"])) * room_c
-    table = [at for at in rows("people").values() if "latent_share" in at]
-    shares = sorted((float(str(at["at_c"])), float(str(at["latent_share"]))) for at in table)
-    latent = np.interp(room_c, [at for at, _ in shares], [share for _, share in shares])
-    return total, total * latent, str(line["source"])
 
 
 def _people(scene: Scene, people: People) -> Entry:
@@ -83,7 +66,7 @@ def _lights(light: Light) -> Entry:
 
 
 def _motor(table: str, motor: Motor) -> Entry:
-    share, source = _share_inside(motor)
+    share, source = share_inside(motor)
     return Entry(
         id=f"{table}.{motor.name}",
         group="internal",
@@ -101,15 +84,3 @@ def _motor(table: str, motor: Motor) -> Entry:
             Input(key="hours_per_day", label="hours a day", value=motor.hours.hours_per_day(), kind="number"),
         ),
     )
-
-
-def _share_inside(motor: Motor) -> tuple[Number, str]:
-    """Share of the power drawn that ends in the room: all, what the shaft carries in, or what the motor loses."""
-    if motor.place == "inside":
-        return 1.0, "as-given"
-    table = rows("motors")
-    sizes = sorted((float(str(size["up_to_w"])), float(str(size["efficiency"]))) for size in table.values())
-    drawn = [shaft / efficiency for shaft, efficiency in sizes]  # the table goes by power at the shaft
-    efficiency = np.interp(motor.power, drawn, [value for _, value in sizes])
-    source = str(next(iter(table.values()))["source"])
-    return (efficiency if motor.place == "load only" else 1.0 - efficiency), source

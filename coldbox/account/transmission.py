@@ -6,18 +6,18 @@ from collections.abc import Mapping
 
 import numpy as np
 
-from coldbox.account import floor, outdoors, sun
+from coldbox.account import outdoors, sun
 from coldbox.account.entry import Entry, Input
-from coldbox.account.floor import Floor
 from coldbox.account.outdoors import Outdoors
 from coldbox.account.shapes import day, steady_mean
 from coldbox.account.surfaces import SurfaceFact, surface_fact
 from coldbox.physics import periodic, shape
 from coldbox.physics.number import FloatArray, Number
 from coldbox.record import Record
-from coldbox.scene import Scene
+from coldbox.scene import Scene, floor
 from coldbox.scene import body as bodies
 from coldbox.scene.draws import matters, most
+from coldbox.scene.floor import Floor
 from coldbox.scene.types import Surface
 
 

@@ -8,10 +8,10 @@ from boxes import box_project, construction, heater, layer, neighbour
 from hypothesis import given
 from hypothesis import strategies as st
 
-from coldbox.account import floor as floors
 from coldbox.account import transmission
-from coldbox.account.floor import floor
+from coldbox.scene import floor as floors
 from coldbox.scene.build import build
+from coldbox.scene.floor import floor
 from coldbox.units.clock import Schedule, Span
 
 SLAB = construction("slab", layer("concrete", thickness=0.12), layer(), layer("concrete", thickness=0.08))

@@ -4,16 +4,15 @@ from __future__ import annotations
 
 import numpy as np
 
-from coldbox.account.shapes import day, steady_mean
 from coldbox.physics import ground
 from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Heater
 from coldbox.record import Record
-from coldbox.scene import Scene
 from coldbox.scene.body import conductance
 from coldbox.scene.constructions import inside_of_foam
 from coldbox.scene.draws import most
-from coldbox.scene.types import Surface
+from coldbox.scene.hours import day, steady_mean
+from coldbox.scene.types import Scene, Surface
 from coldbox.tables import load
 
 # A vented void under a floor, where the project says no more: usual building practice, after ISO 13370 (from memory).
