@@ -32,12 +32,12 @@ def document(heads: list[str], loads: list[Load], system: System) -> Document:
 
 def _blocks(heads: list[str], loads: list[Load], system: System) -> Iterator[Block]:
     yield Heading(text=" / ".join(heads), level=1)
-    columns = (Column(title=""), *(Column(title=head, align="right", gives=True) for head in heads))
+    columns = (Column(title="", gives=True), *(Column(title=head, align="right", gives=True) for head in heads))
     yield Table(columns=columns, rows=tuple(_result_rows(loads, system)))
     yield Heading(text="What differs")
     rows = tuple(differences([load.project for load in loads]))
     if rows:
-        keys = (Column(title="key"), *(Column(title=head, gives=True) for head in heads))
+        keys = (Column(title="key", gives=True), *(Column(title=head, gives=True) for head in heads))
         yield Table(columns=keys, rows=rows)
     else:
         yield Paragraph(text="No input differs.")

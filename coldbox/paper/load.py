@@ -76,7 +76,12 @@ def _answer(load: Load, system: System) -> Iterator[Block]:
             ("ATP rule", f"{factor} x heat through the walls at 30 °C", power(load.by_atp_w), mark.get("atp", ""))
         )
     yield Table(
-        columns=(Column(title=""), Column(title=""), Column(title="", align="right"), Column(title="")),
+        columns=(
+            Column(title="", gives=True),
+            Column(title="", gives=True),
+            Column(title="", align="right"),
+            Column(title=""),
+        ),
         rows=tuple(rows),
     )
     yield Paragraph(text=f"biggest: {_biggest(load)}", indent=1)
@@ -230,6 +235,6 @@ def defaults_document(load: Load) -> Document:
     """Every default this load used, with its reason."""
     used = defaults_used(load.project, for_load=True)
     rows = tuple((path, value, reason) for path, value, reason in used)
-    columns = (Column(title="key"), Column(title="value"), Column(title="why", gives=True))
+    columns = (Column(title="key", gives=True), Column(title="value", gives=True), Column(title="why", gives=True))
     head = Heading(text=f"{load.project.name}: {len(used)} defaults used", level=1)
     return Document(title=load.project.name, blocks=(head, Table(columns=columns, rows=rows)))

@@ -10,7 +10,7 @@ from coldbox.paper.document import Bars, Block, Document, Heading, Paragraph, Ta
 STEPS = "▁▂▃▄▅▆▇█"
 ASCII_STEPS = "_.-=+*%#"
 GAP = "  "
-NARROWEST = 12  # a column that gives way keeps this much
+NARROWEST = 8  # a column that gives way keeps this much
 
 
 def render(document: Document, *, width: int = 80, ascii_only: bool = False) -> str:
@@ -41,7 +41,11 @@ def _table(table: Table, width: int) -> list[str]:
     rows = [titles, *table.rows] if any(titles) else list(table.rows)
     if table.totals:
         rows.append(table.totals)
-    widths = [max(len(row[index]) for row in rows) for index in range(len(table.columns))]
+    body = rows[1:] if any(titles) else rows
+    widths = [
+        max(*(len(word) for word in title.split()), *(len(row[index]) for row in body), 0, 0)
+        for index, title in enumerate(titles)
+    ]
     spare = width - 1 - sum(widths) - len(GAP) * (len(widths) - 1)
     giving = [index for index, column in enumerate(table.columns) if column.gives]
     while spare < 0 and any(widths[index] > NARROWEST for index in giving):
@@ -65,7 +69,7 @@ def _table_lines(table: Table, rows: list[tuple[str, ...]], widths: list[int]) -
 def _cell_lines(cell: str, size: int) -> list[str]:
     if len(cell) <= size:
         return [cell]
-    return textwrap.wrap(cell, size, subsequent_indent=" ") or [""]
+    return textwrap.wrap(cell, size, subsequent_indent=" ", break_on_hyphens=False) or [""]
 
 
 def _bars(bars: Bars, width: int, ascii_only: bool) -> list[str]:
@@ -75,4 +79,5 @@ def _bars(bars: Bars, width: int, ascii_only: bool) -> list[str]:
     marks = [steps[min(int(max(value, 0.0) / top * len(steps)), len(steps) - 1)] * each for value in bars.values]
     scale = "".join(f"{hour:<{6 * each}}" for hour in (0, 6, 12, 18))
     head = f" {bars.label} "
-    return [f"{head}{''.join(marks)}  {bars.lowest} to {bars.highest}", f"{' ' * len(head)}{scale}"]
+    below = f"{' ' * len(head)}{scale.rstrip()}  {bars.lowest} to {bars.highest}"
+    return [f"{head}{''.join(marks)}", below if len(below) <= width else below[:width].rstrip()]
