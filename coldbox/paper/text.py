@@ -69,7 +69,7 @@ def _table_lines(table: Table, rows: list[tuple[str, ...]], widths: list[int]) -
 def _cell_lines(cell: str, size: int) -> list[str]:
     if len(cell) <= size:
         return [cell]
-    return textwrap.wrap(cell, size, subsequent_indent=" ", break_on_hyphens=False) or [""]
+    return textwrap.wrap(cell, size, subsequent_indent=" " if size > NARROWEST else "", break_on_hyphens=False) or [""]
 
 
 def _bars(bars: Bars, width: int, ascii_only: bool) -> list[str]:
