@@ -56,7 +56,7 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
     return Capacity(
         counted_daily_j=daily_j,
         cold_w=0.0 - cold.mean(axis=-1),
-        peak_hour=int(np.argmax(peak_demand.reshape(-1, 24).mean(axis=0))),
+        peak_hour=_first_of_the_highest(peak_demand.reshape(-1, 24).mean(axis=0)),
         peak_w=peak_w,
         by_daily_w=by_daily,
         by_peak_w=by_peak,
@@ -64,6 +64,12 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
         required_w=reduce(np.maximum, candidates.values()),
         governs=max(candidates, key=lambda name: float(np.mean(candidates[name]))),
     )
+
+
+def _first_of_the_highest(hours: FloatArray) -> int:
+    """The first hour that reaches the highest figure; rounding does not choose among equal hours."""
+    highest = float(hours.max())
+    return int(np.argmax(hours >= highest - 1e-9 * max(abs(highest), 1.0)))
 
 
 def _sums(project: Project, entries: list[Entry]) -> tuple[FloatArray, FloatArray, FloatArray]:
