@@ -14,6 +14,7 @@ from coldbox.project.model import Composition, Lot
 from coldbox.record import Record
 
 DRY: Final = 0.2  # with no more free water than this and no freezing point, nothing freezes
+ROUNDING_K: Final = 1e-9  # goods at their freezing point are not yet frozen, whatever units the figures came in
 NEVER_FREEZING_C: Final = 0.0  # goods of unknown freezing point are only computed above this
 
 
