@@ -167,7 +167,7 @@ class Goods(Record):
             return np.zeros_like(temperature_c) if np.ndim(temperature_c) else 0.0
         if self.freezing_point_c is None:
             return respiration.heat(self.at_c, self.w_per_kg, temperature_c)
-        frozen = np.less(temperature_c, self.freezing_point_c)
+        frozen = np.less(temperature_c, self.freezing_point_c - ROUNDING_K)
         awake = np.where(frozen, self.at_c[0], temperature_c)
         result = np.where(frozen, 0.0, respiration.heat(self.at_c, self.w_per_kg, awake))
         return result if result.ndim else float(result)
