@@ -28,12 +28,13 @@ class Record:
         cls._known = frozenset(cls._names)
 
     def __init__(self, **values: Any) -> None:
-        mine = {**self._defaults, **values}
+        mine = self.__dict__  # filled in place: this runs some hundred times for each account
+        mine.update(self._defaults)
+        mine.update(values)
         if mine.keys() != self._known:
             missing = [name for name in self._names if name not in mine]
             unknown = [name for name in mine if name not in self._names]
             raise TypeError(f"{type(self).__name__}: missing {missing}, unknown {unknown}")
-        self.__dict__.update(mine)
 
     def __setattr__(self, name: str, value: object) -> None:
         raise AttributeError(f"{type(self).__name__} is frozen: make another with replace({name}=…)")
