@@ -14,15 +14,16 @@ from coldbox.scene import Scene
 from coldbox.scene.build import build
 
 
-def load(project: Project) -> Load:
+def load(project: Project, *, enthalpy: Number = 1.0) -> Load:
     """The account of one design day and the required refrigeration capacity.
 
-    project: complete, its numbers floats or arrays (draws, 1). Raises BadProject where a quoted figure replaces
+    project: complete, its numbers floats or arrays (draws, 1). enthalpy: factor on the heat contents of goods, for
+    draws: no number of a project says how unsure the model is. Raises BadProject where a quoted figure replaces
     nothing, OutOfValidity where a method does not hold for this box.
     """
     scene = build(project)
     envelope = transmission.envelope(scene)
-    entries = _account(scene, envelope)
+    entries = _account(scene, envelope, enthalpy)
     sized = capacity(project, entries, envelope.ua_w_per_k)
     frost_kg = frost.frost_kg_per_day(scene, entries)
     hours_w = _sum(entries)
@@ -50,12 +51,12 @@ def load(project: Project) -> Load:
     )
 
 
-def _account(scene: Scene, envelope: transmission.Envelope) -> list[Entry]:
+def _account(scene: Scene, envelope: transmission.Envelope, enthalpy: Number) -> list[Entry]:
     """All entries of the day, quoted figures in their places."""
     others = [
         *envelope.entries,
         *infiltration.entries(scene),
-        *product.entries(scene),
+        *product.entries(scene, enthalpy),
         *internal.entries(scene),
     ]
     rest = quoted.put_in_place(scene, others)[0]

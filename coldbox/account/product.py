@@ -21,14 +21,14 @@ PARTS_OF_AN_HOUR = 4  # steps within the hour in which a falling temperature is 
 EVAPORATION_J_PER_KG = 2.5e6  # heat of evaporation near 0 °C, moist-air tables
 
 
-def entries(scene: Scene) -> list[Entry]:
-    """Every product entry of the account, lot by lot."""
+def entries(scene: Scene, enthalpy: Number = 1.0) -> list[Entry]:
+    """Every product entry of the account, lot by lot. enthalpy: factor on the heat contents of goods."""
     found: list[Entry] = []
     for lot in scene.project.lots:
         kind = goods(lot)
         if most(lot.arrives) > 0:
             shares = _pulldown_shares(lot)
-            found.append(_intake(scene, lot, kind, shares))
+            found.append(_intake(scene, lot, kind, shares, enthalpy))
             if lot.packaging != "none" and most(lot.packaging_mass) > 0:
                 found.append(_packaging(scene, lot, shares))
         if kind.lives:
@@ -76,10 +76,10 @@ def _pulldown_shares(lot: Lot) -> FloatArray:
     return _folded(np.diff(removed_share(edges, lot.pulldown, lot.chilling_factor), axis=-1), days)
 
 
-def _intake(scene: Scene, lot: Lot, kind: Goods, shares: FloatArray) -> Entry:
+def _intake(scene: Scene, lot: Lot, kind: Goods, shares: FloatArray, enthalpy: Number) -> Entry:
     room = scene.room.temperature_c
     warm = _arrival_temperature(lot)
-    per_kg = kind.enthalpy(warm) - kind.enthalpy(room)
+    per_kg = enthalpy * (kind.enthalpy(warm) - kind.enthalpy(room))
     daily = lot.arrives * SECONDS_A_DAY * per_kg
     return Entry(
         id=f"lots.{lot.name}.intake",

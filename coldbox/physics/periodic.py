@@ -161,7 +161,7 @@ def _chain(stack: list[tuple[Number, Number]], inside: Number) -> tuple[ComplexA
             continue
         admitted = np.asarray(_I_OMEGA * c)
         t, sech = _layer(np.asarray(admitted * r, complex), float(np.max(r * c)))
-        admitted *= t
+        admitted = admitted * t  # not in place: t has draws where only the resistance does
         slowed = 1.0 + admitted * z
         z = np.asarray((z + r * t) / slowed, complex)
         flux = np.asarray(flux * sech / slowed, complex)
