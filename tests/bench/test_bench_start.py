@@ -32,7 +32,7 @@ def _seconds(command: Sequence[str]) -> float:
 
 
 def _ratio(label: str, ours: Sequence[str], floor: Sequence[str]) -> float:
-    """The least of ours against the least of the floor, taken in turns; the middle of the pairs is printed beside it."""
+    """Least of ours against least of the floor, taken in turns; the middle of the pairs is printed beside it."""
     for command in (ours, floor):
         _seconds(command)
     pairs = [(_seconds(ours), _seconds(floor)) for _ in range(PAIRS)]
