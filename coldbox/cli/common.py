@@ -14,6 +14,10 @@ if TYPE_CHECKING:
     from coldbox.project.model import Project
 
 
+USUAL_DRAWS = 500
+MOST_DRAWS = 200_000
+
+
 def result_options(parser: argparse.ArgumentParser) -> None:
     """--units, --json, --set."""
     parser.add_argument("--units", choices=("SI", "IP"), help="show SI or IP, whatever the project says")
@@ -30,6 +34,36 @@ def set_option(parser: argparse.ArgumentParser) -> None:
         metavar="KEY=VALUE",
         help="change one input for this run, such as --set 'doors.main.width=1.2 m'",
     )
+
+
+def draw_options(parser: argparse.ArgumentParser, usual: int) -> None:
+    """--draws and --seed."""
+    none = "; 0: none" if usual else ""
+    parser.add_argument(
+        "--draws",
+        type=int,
+        default=usual,
+        metavar="N",
+        help=f"how many draws of what is unsure (usually {usual}{none})",
+    )
+    parser.add_argument("--seed", type=int, default=1, metavar="S", help="another seed, other draws (usually 1)")
+
+
+def check_draws(options: argparse.Namespace) -> None:
+    """Raises BadProject for a count or a seed that will not do."""
+    wrong = []
+    if not 0 <= options.draws <= MOST_DRAWS:
+        wrong.append(Problem(f"{options.draws} draws will not do. Write 0 to {MOST_DRAWS}.", file="--draws"))
+    if options.seed < 0:
+        wrong.append(Problem(f"{options.seed} is no seed. Write a whole number from 0 up.", file="--seed"))
+    if wrong:
+        raise BadProject(wrong)
+
+
+def with_outage(options: argparse.Namespace) -> list[str]:
+    """The --set options, with --at and --asked among them."""
+    keys = (("outage.at", options.at), ("outage.asked", options.asked))
+    return [*options.set, *(f"{key}={value}" for key, value in keys if value)]
 
 
 def settings(pairs: list[str]) -> dict[str, str]:

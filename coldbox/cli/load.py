@@ -13,6 +13,7 @@ examples:
   coldbox load projects/quay.toml --how            formulas and inputs too
   coldbox load projects/quay.toml --defaults
   coldbox load projects/quay.toml --set 'box.temperature=-20 °C' --json
+  coldbox load projects/quay.toml --draws 500      how sure it is
   coldbox load projects/quay.toml --csv hours.csv"""
 
 
@@ -20,6 +21,7 @@ def arguments(parser: argparse.ArgumentParser) -> None:
     """Options of this command."""
     parser.add_argument("file", help="the project file")
     common.result_options(parser)
+    common.draw_options(parser, 0)
     parser.add_argument("--how", action="store_true", help="each entry's formula and inputs too")
     parser.add_argument("--defaults", action="store_true", help="list the defaults used")
     parser.add_argument("--markdown", action="store_true", help="the account as Markdown")
@@ -28,11 +30,17 @@ def arguments(parser: argparse.ArgumentParser) -> None:
 
 def run(options: argparse.Namespace) -> int:
     """Print the load; 1 when a finding of this box is a danger."""
+    common.check_draws(options)
     project = common.open_project(options.file, options.set)
 
     from coldbox.account.load import load as account_load
 
     load = account_load(project)
+    spread = None
+    if options.draws:
+        from coldbox.spread.capacity import capacity_spread
+
+        spread = capacity_spread(project, options.draws, options.seed)
     if options.csv:
         from coldbox.paper import data
 
@@ -40,12 +48,16 @@ def run(options: argparse.Namespace) -> int:
     if options.json:
         from coldbox.paper import data
 
-        common.print_json(data.load_json(load))
+        common.print_json(data.load_json(load, spread))
     else:
         from coldbox.paper import load as paper
 
         system = common.system_of(options, project)
-        document = paper.defaults_document(load) if options.defaults else paper.document(load, system, how=options.how)
+        document = (
+            paper.defaults_document(load)
+            if options.defaults
+            else paper.document(load, system, how=options.how, spread=spread)
+        )
         if options.markdown:
             from coldbox.paper import markdown
 

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import Literal
+from typing import TYPE_CHECKING, Literal
 
 import numpy as np
 
@@ -13,6 +13,9 @@ from coldbox.paper.document import Bars, Block, Column, Document, Heading, Parag
 from coldbox.project.origins import defaults_used
 from coldbox.tables.load import source
 from coldbox.units import display_unit, show
+
+if TYPE_CHECKING:
+    from coldbox.spread.capacity import CapacitySpread
 
 System = Literal["SI", "IP"]
 
@@ -27,13 +30,18 @@ GROUP_WORDS = {
 LEVELS: tuple[Literal["danger", "caution", "note"], ...] = ("danger", "caution", "note")
 
 
-def document(load: Load, system: System, *, how: bool = False) -> Document:
-    """The whole account of a load without draws, figures in SI or IP; `how` adds each entry's formula and inputs."""
+def document(load: Load, system: System, *, how: bool = False, spread: CapacitySpread | None = None) -> Document:
+    """The whole account of a load without draws, figures in SI or IP; `how` adds each entry's formula and inputs,
+    `spread` how sure the capacity is."""
     sources = _numbered_sources(load)
     blocks: list[Block] = [*_answer(load, system), Heading(text="The box and its day", level=2)]
     blocks += [Paragraph(text=line) for line in box_lines(load, system)]
     blocks += [Heading(text="The account", level=2), _account(load, system, sources), _day(load, system)]
     blocks += [Paragraph(text=line) for line in _after(load, system)]
+    if spread is not None:
+        from coldbox.paper.sure import capacity_blocks
+
+        blocks += capacity_blocks(spread, system)
     blocks += findings_blocks(load.findings, heading=True)
     if how:
         blocks += _how(load, system, sources)
