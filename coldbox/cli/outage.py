@@ -15,7 +15,7 @@ examples:
   coldbox outage projects/net-loft-full.toml
   coldbox outage projects/net-loft-full.toml --asked 36h --at 22:00
   coldbox outage projects/net-loft-full.toml --draws 5000 --seed 7
-  coldbox outage projects/net-loft-full.toml --set 'outage.lasts=30 h' --recovery
+  coldbox outage projects/net-loft-full.toml --recovery --set outage.lasts=30h
   coldbox outage projects/net-loft-full.toml --pulldown
   coldbox outage projects/weekend-parcel.toml --json
   coldbox outage projects/milk-van.toml --csv trace.csv"""

@@ -10,7 +10,7 @@ EXAMPLES = """\
 examples:
   coldbox trip projects/island-round.toml
   coldbox trip projects/island-round.toml --at 05:30
-  coldbox trip projects/island-round.toml --set 'trip.dry_bulb=36 °C' --draws 2000
+  coldbox trip projects/island-round.toml --set 'trip.dry_bulb=36 °C'
   coldbox trip projects/island-round.toml --json"""
 
 

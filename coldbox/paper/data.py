@@ -166,7 +166,7 @@ def _hold_spread(spread: HoldSpread) -> dict[str, Json]:
         "p10_error_h": hours.p10_error,
         "p50_error_h": hours.p50_error,
         "p90_error_h": hours.p90_error,
-        "never_share": spread.never_share,
+        "never_share": spread.never.share,
         "chance_of_asked": None if spread.asked is None else spread.asked.share,
         "chance_error": None if spread.asked is None else spread.asked.error,
         "limits": [

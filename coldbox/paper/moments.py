@@ -140,7 +140,7 @@ def _instants(found: Outage, told: list[float]) -> list[float]:
     regular = [float(one) - start for one in np.arange(first * step, start + whole - 1e-9, step)]
     told = [one for one in told if 0.0 <= one <= whole][:MOST_ROWS]
     fixed = sorted({0.0, *told, whole})
-    regular = [one for one in regular if min(abs(one - other) for other in fixed) >= step / 4.0]
+    regular = [one for one in regular if min(abs(one - other) for other in fixed) >= step / 8.0]
     return sorted({*fixed, *regular[: max(MOST_ROWS - len(fixed), 0)]})
 
 

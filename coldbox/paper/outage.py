@@ -79,20 +79,26 @@ def _holds(found: Outage, system: System) -> Iterator[str]:
         until = show(found.start_clock_h + found.hold_h, "clock")
         yield f"Holds {duration(found.hold_h)}{range_}: until {until}"
     yield first_words(found, system)
+    yield from then_words(found, system)
 
 
 def first_words(found: Outage, system: System) -> str:
-    """Who first, then who next; or what comes nearest to its limit."""
+    """Who first; or what comes nearest to its limit."""
     if not found.limits:
         return "nothing in it has a limit: write limits on a lot or on the box"
     crossed = [one for one in of_limits(found) if one.crossed_at_h is not None]
     if crossed:
-        first = crossed[0]
-        then = f"; then {_crosses(crossed[1], system)}, {crossed[1].at_clock}" if len(crossed) > 1 else ""
-        return f"first: {_crosses(first, system)}{then}"
+        return f"first: {_crosses(crossed[0], system)}"
     nearest = min(found.limits, key=_margin)
     margin = show(max(_margin(nearest), 0.0), "difference", system)
     return f"nearest to its limit: {place_of(nearest)}, {margin} from {_degrees(nearest.limit_c, system)}"
+
+
+def then_words(found: Outage, system: System) -> Iterator[str]:
+    """Who comes next, and when."""
+    crossed = [one for one in of_limits(found) if one.crossed_at_h is not None]
+    if len(crossed) > 1:
+        yield f"then: {_crosses(crossed[1], system)}, {crossed[1].at_clock}"
 
 
 def _margin(limit: LimitResult) -> float:
@@ -180,7 +186,8 @@ def _limits(found: Outage, system: System) -> Table:
             when or ("never beyond" if coming_back and not _beyond_at_end(one) else "not within"),
         ]
         if spread is not None:
-            row.append(eight_in_ten(spread.limits[found.limits.index(one)], found.horizon_h))
+            place = next(at for at, other in enumerate(found.limits) if other is one)
+            row.append(eight_in_ten(spread.limits[place], found.horizon_h))
         rows.append(tuple(row))
     columns = [
         Column(title="lot", gives=True),

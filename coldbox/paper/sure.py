@@ -11,7 +11,8 @@ from coldbox.units import show
 if TYPE_CHECKING:  # each command loads only its own half
     from coldbox.spread.capacity import CapacitySpread
     from coldbox.spread.hold import HoldSpread
-    from coldbox.spread.percentiles import Percentiles
+    from coldbox.spread.influence import Driver
+    from coldbox.spread.percentiles import Chance, Percentiles
 
 System = Literal["SI", "IP"]
 
@@ -19,7 +20,6 @@ ROUNDS_MIN: Final = (1.0, 2.0, 5.0, 10.0, 15.0, 30.0, 60.0)
 MOST_DRIVERS: Final = 6
 _COLUMNS: Final = (
     Column(title="input", gives=True),
-    Column(title="key", gives=True),
     Column(title="where lowest", align="right"),
     Column(title="where highest", align="right"),
 )
@@ -53,13 +53,19 @@ def asked_words(spread: HoldSpread | None, asked_h: float, verb: str) -> str:
     """The third line: how sure that it holds, or is reached, as long as asked."""
     if spread is None:
         return f"how sure: not looked into; --draws 500 tells how sure the asked {duration(asked_h)} are"
-    how = f"{spread.draws} draws, seed {spread.seed}"
     if spread.asked is None:
-        never = f"in {percent(spread.never_share)} of {how} {verb} to the end"
+        never = f"in {percent(spread.never.share)} of {spread.draws} draws {verb} to the end"
         return f"how sure: the asked {duration(asked_h)} are beyond what was looked at; {never}"
-    points = max(1, round(100.0 * spread.asked.error))
-    error = f"± {points} point{'s' if points > 1 else ''}"
-    return f"the asked {duration(asked_h)}: {percent(spread.asked.share)} sure ({error}; {how})"
+    return f"the asked {duration(asked_h)}: {sure_words(spread.asked, spread)}"
+
+
+def sure_words(found: Chance, spread: HoldSpread) -> str:
+    """A chance with its error; where all draws agree, and are many, no certainty beyond what they can tell."""
+    how = f"{spread.draws} draws, seed {spread.seed}"
+    if found.share in (0.0, 1.0) and found.error < 0.01:
+        return f"{'over 99 %' if found.share else 'under 1 %'} sure ({how})"
+    points = max(1, round(100.0 * found.error))
+    return f"{percent(found.share)} sure (± {points} point{'s' if points > 1 else ''}; {how})"
 
 
 def percent(share: float) -> str:
@@ -78,20 +84,24 @@ def driver_blocks(spread: HoldSpread) -> Iterator[Block]:
         yield Paragraph(text="No input moves it more than chance does.")
     else:
         rows = tuple(
-            (one.label, one.key, _signed(one.at_lowest), _signed(one.at_highest))
-            for one in spread.drivers[:MOST_DRIVERS]
+            (_named(one), _signed(one.at_lowest), _signed(one.at_highest)) for one in spread.drivers[:MOST_DRIVERS]
         )
         yield Table(columns=_COLUMNS, rows=rows)
         if spread.drivers[0].beyond:
             yield Paragraph(
-                text=f"{percent(spread.never_share)} of the draws lie beyond the horizon and count as the horizon here."
+                text=f"{percent(spread.never.share)} of the draws lie beyond the horizon and count as the horizon here."
             )
     if spread.left_out:
         yield Paragraph(text=f"Not drawn, since a ± means nothing there: {', '.join(spread.left_out)}.")
 
 
+def _named(driver: Driver) -> str:
+    """Its key path, which is what somebody would change; of a factor with what it stands for."""
+    return f"{driver.label} ({driver.key})" if driver.key.startswith("spreads.") else driver.key
+
+
 def _signed(hours: float) -> str:
-    return f"{'-' if hours < 0 else '+'} {duration(abs(hours))}"
+    return f"{'-' if hours < 0 else '+'} {duration(round(abs(hours) * 60.0) / 60.0)}"
 
 
 def capacity_blocks(spread: CapacitySpread, system: System) -> Iterator[Block]:

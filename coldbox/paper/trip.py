@@ -6,8 +6,8 @@ from collections.abc import Iterator
 from typing import Literal
 
 from coldbox.paper.document import Block, Column, Document, Heading, Paragraph, Table
-from coldbox.paper.outage import details, first_words, spread_of, told_findings
-from coldbox.paper.sure import duration, eight_in_ten, percent
+from coldbox.paper.outage import details, first_words, spread_of, then_words, told_findings
+from coldbox.paper.sure import duration, eight_in_ten, sure_words
 from coldbox.timeline.results import LegResult, Trip
 from coldbox.units import compass_point, show
 
@@ -38,10 +38,10 @@ def _answer(found: Trip, system: System) -> Iterator[Block]:
     if spread is None:
         yield Paragraph(text="how sure: not looked into; --draws 500 tells", indent=1)
     else:
-        points = max(1, round(100.0 * (spread.asked.error if spread.asked else 0.0)))
-        error = f"± {points} point{'s' if points > 1 else ''}"
-        sure = f"every limit kept to the end: {percent(spread.never_share)} sure"
-        yield Paragraph(text=f"{sure} ({error}; {spread.draws} draws, seed {spread.seed})", indent=1)
+        sure = sure_words(spread.never, spread)
+        yield Paragraph(text=f"every limit kept to the end: {sure}", indent=1)
+    for line in then_words(found, system):
+        yield Paragraph(text=line, indent=1)
     yield from told_findings(found)
     temperature = show(float(found.trace.air_c[0]), "temperature", system)
     yield Paragraph(

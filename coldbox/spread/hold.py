@@ -40,7 +40,7 @@ class HoldSpread(Record):
     draws: int
     seed: int
     hours: Percentiles
-    never_share: float  # of draws in which nothing is crossed, or it is not reached, within the run
+    never: Chance  # of draws in which nothing is crossed, or it is not reached, within the run
     asked: Chance | None  # that it holds so long as asked, or is reached by then; None: beyond the horizon
     drivers: tuple[Driver, ...]
     limits: tuple[Percentiles, ...]  # of each of the result's limits: when it is crossed, or last back within it
@@ -169,7 +169,7 @@ def _spread(whole: Outage, drawn: Draws) -> HoldSpread:
         draws=drawn.count,
         seed=drawn.seed,
         hours=percentiles(hours),
-        never_share=float(np.mean(~np.isfinite(hours))),
+        never=chance(hours, np.inf),
         asked=asked,
         drivers=drivers(drawn, hours, whole.horizon_h),
         limits=tuple(percentiles(np.full(drawn.count, np.inf) if one is None else one) for one in back),

@@ -30,7 +30,11 @@ def never_crossed() -> Outage:
     kept = by_hand.limit(crossed_at_h=None, at_clock=None, end_c=-13.5, worst_c=-13.5, beyond_min=0.0)
     never = percentiles(np.full(500, np.inf))
     sure = by_hand.spread(
-        hours=never, never_share=1.0, asked=Chance(share=1.0, error=0.004), limits=(never,), first_shares=(0.0,)
+        hours=never,
+        never=Chance(share=1.0, error=0.004),
+        asked=Chance(share=1.0, error=0.004),
+        limits=(never,),
+        first_shares=(0.0,),
     )
     return by_hand.outage(limits=(kept,), first=None, hold_h=None, spread=sure)
 
@@ -54,17 +58,21 @@ def test_what_comes_second_is_named() -> None:
     late = by_hand.limit(lot="peas", where="mean", crossed_at_h=25.5, at_clock=by_hand.clock(25.5), allowed_min=30.0)
     limits = (late, by_hand.limit())
     both = by_hand.spread(limits=by_hand.spread().limits, first_shares=(0.0, 1.0))
-    page = " ".join(lines_of(by_hand.outage(limits=limits, spread=both)))
-    assert "first: cod surface passes -12 °C; then peas mean passes -12 °C for 30 min, 15:30 day 2" in " ".join(
-        page.split()
-    )
+    page = lines_of(by_hand.outage(limits=limits, spread=both))
+    assert page[1] == "  first: cod surface passes -12 °C"
+    assert page[3] == "  then: peas mean passes -12 °C for 30 min, 15:30 day 2"
+
+
+def test_few_draws_that_agree_are_no_certainty() -> None:
+    few = by_hand.spread(draws=20, asked=Chance(share=1.0, error=0.08))
+    assert lines_of(by_hand.outage(spread=few))[2] == "  the asked 16 h: 100 % sure (± 8 points; 20 draws, seed 1)"
 
 
 def test_nothing_crossed_says_who_comes_nearest() -> None:
     how_long, who, how_sure = lines_of(never_crossed())[:3]
     assert how_long == "Holds beyond 48 h, as far as it was looked at (beyond 48 h, 8 in 10)"
     assert who == "  nearest to its limit: cod surface, 1.5 K from -12 °C"
-    assert how_sure == "  the asked 16 h: 100 % sure (± 1 point; 500 draws, seed 1)"
+    assert how_sure == "  the asked 16 h: over 99 % sure (500 draws, seed 1)"
 
 
 def test_a_lower_limit_says_so() -> None:
@@ -102,6 +110,7 @@ def test_pulldown_and_recovery() -> None:
 def test_a_trip_is_told_leg_by_leg() -> None:
     page = lines_of(by_hand.trip())
     assert page[0] == "Holds 18 h 20 min of 48 h (15 h 30 to 20 h 45 min, 8 in 10): until 08:20 day 2"
+    assert page[2] == "  every limit kept to the end: under 1 % sure (500 draws, seed 1)"
     table = page[page.index("Leg by leg") + 1 :][:5]
     assert any("stop: bakery" in line and "cod surface -11 °C" in line and "-1 K" in line for line in table)
     assert any("to the bakery, E" in line for line in table) and any("home, W" in line for line in table)
@@ -179,5 +188,7 @@ def test_what_cannot_be_drawn_is_told() -> None:
 
 
 def test_asked_beyond_the_horizon() -> None:
-    page = lines_of(by_hand.outage(asked_h=60.0, spread=by_hand.spread(asked=None, never_share=0.25)))
+    page = lines_of(
+        by_hand.outage(asked_h=60.0, spread=by_hand.spread(asked=None, never=Chance(share=0.25, error=0.04)))
+    )
     assert "60 h are beyond what was looked at" in page[2] and "25 %" in page[2] + page[3]

@@ -11,7 +11,7 @@ import numpy as np
 import runs_by_hand as by_hand
 
 from coldbox.paper import data, moments
-from coldbox.spread.percentiles import percentiles
+from coldbox.spread.percentiles import Chance, percentiles
 
 
 def as_read(value: Any) -> Any:
@@ -47,7 +47,7 @@ def test_outage_has_the_keys_of_the_contract() -> None:
 
 
 def test_beyond_the_horizon_is_null() -> None:
-    never = by_hand.spread(hours=percentiles(np.full(500, np.inf)), never_share=1.0, asked=None)
+    never = by_hand.spread(hours=percentiles(np.full(500, np.inf)), never=Chance(share=1.0, error=0.004), asked=None)
     found = as_read(data.outage_json(by_hand.outage(hold_h=None, first=None, spread=never)))
     assert found["hold_h"] is None and found["first"] is None
     spread = found["spread"]

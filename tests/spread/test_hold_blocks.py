@@ -77,10 +77,10 @@ def test_the_spread_says_what_the_draws_say() -> None:
     assert hours is not None
     finite = np.where(np.isinf(hours), 1e9, hours)
     assert spread.hours.p10 == pytest.approx(np.quantile(finite, 0.1))
-    assert spread.never_share == np.mean(np.isinf(hours)) > 0.1
+    assert spread.never.share == np.mean(np.isinf(hours)) > 0.1
     assert spread.hours.p90 is None
     assert spread.asked.share == np.mean(hours >= 16.0)
-    assert spread.first_shares == (1.0 - spread.never_share, 0.0)
+    assert spread.first_shares == (1.0 - spread.never.share, 0.0)
     assert spread.limits[0] == spread.hours and spread.limits[1].p10 is None
     assert [one.key for one in spread.drivers[:2]] == ["box.leakage", "spreads.films"] or [
         one.key for one in spread.drivers[:2]

@@ -40,7 +40,7 @@ def limit(**changes: Any) -> LimitResult:
     given: dict[str, Any] = {
         "lot": "cod", "side": "above", "where": "surface", "limit_c": -12.0, "allowed_min": 0.0,
         "crossed_at_h": 18.0 + 1.0 / 3.0, "at_clock": clock(18.0 + 1.0 / 3.0), "start_c": -18.0, "end_c": -6.0,
-        "worst_c": -6.0, "beyond_min": 1780.0,
+        "worst_c": -6.0, "beyond_min": 1780.0, "crossed_draws_h": np.linspace(10.0, 30.0, 500),
     }  # fmt: skip
     return LimitResult(**{**given, **changes})
 
@@ -69,7 +69,7 @@ def spread(**changes: Any) -> HoldSpread:
     leak = Driver(key="box.leakage", label="leakage", at_lowest=2.5, at_highest=-2.7, beyond=False)
     foam = Driver(key="spreads.foam", label="conductivity of the foam", at_lowest=1.8, at_highest=-1.9, beyond=False)
     given: dict[str, Any] = {
-        "draws": 500, "seed": 1, "hours": percentiles(hours), "never_share": 0.0,
+        "draws": 500, "seed": 1, "hours": percentiles(hours), "never": Chance(share=0.0, error=0.0038),
         "asked": Chance(share=0.84, error=0.032),
         "drivers": (leak, foam), "limits": (percentiles(hours), percentiles(np.full(500, np.inf))),
         "first_shares": (1.0, 0.0), "left_out": (),
