@@ -123,6 +123,6 @@ def capacity_blocks(spread: CapacitySpread, system: System) -> Iterator[Block]:
             return f"{'-' if watts < 0 else '+'} {power(abs(watts))}"
 
         rows = tuple(
-            (one.label, one.key, signed(one.at_lowest), signed(one.at_highest)) for one in spread.drivers[:MOST_DRIVERS]
+            (_named(one), signed(one.at_lowest), signed(one.at_highest)) for one in spread.drivers[:MOST_DRIVERS]
         )
         yield Table(columns=_COLUMNS, rows=rows)
