@@ -38,7 +38,7 @@ def formula(project: Project, *, factors: Any = None, go_on: Any = None, series:
         first_draws=np.where(np.isfinite(hours), 0, -1),
         limits=(first.replace(crossed_draws_h=hours), core.replace(crossed_draws_h=np.full(len(hours), np.inf))),
         packs=(by_hand.outage().packs[0].replace(spent_draws_h=2.0 * hours),),
-        heat_balance_error=float(1e-9 * len(hours)),
+        heat_balance_error=1e-9 * len(hours) + (0.0 if series else 1e-8),
         notes=("series kept",) if series else ("no series",),
         spread=None,
     )
@@ -123,7 +123,7 @@ def test_it_stops_at_once_when_told() -> None:
 
 def test_the_worst_balance_and_every_note_are_kept() -> None:
     found = hold.run(PROJECT, count=25, block=10)
-    assert found.heat_balance_error == pytest.approx(11e-9)
+    assert found.heat_balance_error == pytest.approx(21e-9)
     assert found.notes == ("series kept", "no series")
 
 
