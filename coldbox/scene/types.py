@@ -97,7 +97,7 @@ class Body(Record):
 
 
 class Scene(Record):
-    """Everything the account and the timeline start from."""
+    """Everything that computes starts from this."""
 
     project: Project
     body: Body
