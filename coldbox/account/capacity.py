@@ -47,8 +47,9 @@ def capacity(project: Project, entries: list[Entry], ua_w_per_k: Number) -> Capa
     peak_w = peak_demand.max(axis=-1)
     daily_j = counted.sum(axis=-1) * 3600.0
     margin = 1.0 + _flat(project.sizing.safety)
-    by_daily = daily_j / _flat(project.sizing.run_hours) * margin
-    by_peak = peak_w * margin
+    # With credit for the cold the sums may fall below nothing: others then keep the box cold, and it needs no machine.
+    by_daily = np.maximum(daily_j, 0.0) / _flat(project.sizing.run_hours) * margin
+    by_peak = np.maximum(peak_w, 0.0) * margin
     by_atp = _atp(project, ua_w_per_k)
     candidates: dict[Literal["daily", "peak", "atp"], Number] = {"daily": by_daily, "peak": by_peak}
     if by_atp is not None:

@@ -58,6 +58,11 @@ def test_cold_is_credited_only_on_request():
     assert without.cold_w == pytest.approx(200.0) == pytest.approx(with_it.cold_w)
 
 
+def test_a_box_that_others_keep_cold_needs_no_machine():
+    sized = capacity(project(credit_cold=True), [entry("freezer next door", np.full(24, -200.0))], 10.0)
+    assert sized.required_w == sized.by_daily_w == sized.by_peak_w == 0.0
+
+
 @pytest.mark.parametrize(("rule", "outside_less_class"), [("atp-a", 30.0), ("atp-b", 40.0), ("atp-c", 50.0)])
 @pytest.mark.parametrize(("together", "factor"), [(False, 1.75), (True, 1.35)])
 def test_the_transport_rule_asks_for_its_multiple_of_the_walls(rule, outside_less_class, together, factor):
