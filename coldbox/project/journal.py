@@ -1,0 +1,158 @@
+"""Unsaved work, kept outside the shared folder until it is saved: in the user's own state folder.
+
+Each session keeps one journal for each file it edits, so two sessions never lose each other's. A journal names the
+version of the file that its work began from, and is offered at the next opening when its session has ended.
+"""
+
+from __future__ import annotations
+
+import builtins
+import os
+import tomllib
+from collections.abc import Mapping
+from contextlib import suppress
+from typing import Any
+
+from coldbox.errors import FileTrouble
+from coldbox.project import holder as holders
+from coldbox.project import whole
+from coldbox.project.holder import Holder
+from coldbox.project.store import LIMIT_BYTES, Stamp
+from coldbox.record import Record
+
+_ENDING = ".toml"
+_SUM = b"# coldbox journal, sha256 "
+
+
+class Journal(Record):
+    """Work that a session left unsaved.
+
+    `path` is the file it belongs to, `document` the project as TOML data, `stamp` the version of the file that the work
+    began from (None: no file was there), `holder` the session, `when_ns` the time of its last edit by its own clock.
+    """
+
+    file: str
+    path: str
+    document: dict[str, Any]
+    stamp: Stamp | None
+    holder: Holder
+    when_ns: int
+
+    def fits(self, now: Stamp | None) -> bool:
+        """Whether the file still has the content that the work began from; else people must choose."""
+        if now is None or self.stamp is None:
+            return now is self.stamp
+        return (now.size, now.sha256) == (self.stamp.size, self.stamp.sha256)
+
+
+def write(path: str | os.PathLike[str], document: Mapping[str, Any], stamp: Stamp | None) -> None:
+    """Keep unsaved work, whole or not at all.
+
+    path      the file it belongs to
+    document  the project as TOML data
+    stamp     the version of the file that the work began from; None when there was none
+    raises    FileTrouble; the journal before it is then still there
+    """
+    import tomli_w
+
+    ours = holders.me()
+    target = os.path.realpath(path)
+    facts = {
+        "path": target,
+        "holder": dict(ours),
+        **({} if stamp is None else {"stamp": dict(stamp)}),
+        "document": document,
+    }
+    name = os.path.join(_folder(), f"{_of(target)}-{ours.session()}{_ENDING}")
+    try:
+        data = tomli_w.dumps(facts).encode("utf-8")
+        os.makedirs(_folder(), mode=0o700, exist_ok=True)
+        whole.replace(name, _sealed(data), lambda: None, previous=False, mode=0o600)
+        whole.flush_folder(_folder())
+    except UnicodeEncodeError:
+        raise FileTrouble(os.fspath(path), "the text holds half a character, which UTF-8 cannot carry.") from None
+    except OSError as error:
+        reason = (error.strerror or "it cannot be written").lower()
+        raise FileTrouble(name, f"unsaved work cannot be kept there: {reason}.") from None
+
+
+def find(path: str | os.PathLike[str]) -> Journal | None:
+    """The latest work on a file that a session left unsaved when it ended; None when there is none.
+
+    path    the file
+    result  of sessions on hosts that cannot be asked, too; never of a session that is known to go on. Damaged journals
+            count as none
+    """
+    found = _left(path)
+    return max(found, key=lambda journal: journal.when_ns, default=None)
+
+
+def drop(path: str | os.PathLike[str], offered: Journal | None = None) -> None:
+    """Forget the unsaved work of this session on a file: it is saved, or given up.
+
+    path     the file
+    offered  a journal that `find` gave and that is taken over or declined, forgotten too
+    """
+    name = os.path.join(_folder(), f"{_of(os.path.realpath(path))}-{holders.me().session()}{_ENDING}")
+    for left in (name, *(() if offered is None else (offered.file,))):
+        with suppress(OSError):
+            os.unlink(left)
+
+
+def _left(path: str | os.PathLike[str]) -> list[Journal]:
+    target, ours = os.path.realpath(path), holders.me().session()
+    try:
+        entries = [name for name in os.listdir(_folder()) if name.startswith(_of(target)) and name.endswith(_ENDING)]
+    except OSError:
+        return []
+    journals = [journal for name in entries if (journal := _read(os.path.join(_folder(), name))) is not None]
+    return [
+        journal
+        for journal in journals
+        if journal.path == target and journal.holder.session() != ours and holders.gone(journal.holder) is not False
+    ]
+
+
+def _read(name: str) -> Journal | None:
+    try:
+        with builtins.open(name, "rb") as handle:
+            when_ns = os.fstat(handle.fileno()).st_mtime_ns
+            sealed = handle.read(4 * LIMIT_BYTES)
+        _, _, data = sealed.partition(b"\n")
+        if _sealed(data) != sealed:
+            return None
+        facts = tomllib.loads(data.decode("utf-8"))
+        holder, document, stamp = holders.told(facts["holder"]), facts["document"], facts.get("stamp")
+        if holder is None or not isinstance(document, dict):
+            return None
+        return Journal(
+            file=name,
+            path=facts["path"],
+            document=document,
+            stamp=None if stamp is None else Stamp(**stamp),
+            holder=holder,
+            when_ns=when_ns,
+        )
+    except (OSError, ValueError, KeyError, TypeError, RecursionError):
+        return None
+
+
+def _sealed(data: bytes) -> bytes:
+    """With the sum of it in front: half a journal would read as a project with less in it."""
+    from hashlib import sha256
+
+    return _SUM + sha256(data).hexdigest().encode() + b"\n" + data
+
+
+def _folder() -> str:
+    state = os.environ.get("XDG_STATE_HOME", "")
+    if not os.path.isabs(state):  # unset, empty, or relative, which the standard says to ignore
+        state = os.path.join(os.path.expanduser("~"), ".local", "state")
+    return os.path.join(state, "coldbox", "journal")
+
+
+def _of(target: str) -> str:
+    """What the journals of one file begin with."""
+    from hashlib import sha256
+
+    return sha256(os.fsencode(target)).hexdigest()[:20]
