@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, ClassVar
 from coldbox.tui.frame import Frame
 
 if TYPE_CHECKING:
+    from coldbox.tui.sheets.jump import Target
     from coldbox.tui.shell import Shell
 
 
@@ -30,6 +31,11 @@ class Layer:
     @property
     def typing(self) -> bool:
         """Whether letters go into a text, and are no commands."""
+        return False
+
+    @property
+    def takes_letters(self) -> bool:
+        """Whether a letter begins a text, unless it is bound to an action of just this layer."""
         return False
 
     def draw(self, frame: Frame, area: Area) -> None:
@@ -63,12 +69,27 @@ class Layer:
         """The keys that matter most here, for the last line."""
         return ""
 
+    def targets(self) -> list[Target]:
+        """The places on the screen that can be jumped to, as drawn last."""
+        return []
+
     def copied(self) -> str:
         """What "copy" copies here."""
         return self.spoken()
 
+    @property
+    def busy(self) -> bool:
+        """Whether something it started still runs."""
+        return False
+
+    def enter(self) -> None:
+        """The layer has just come to be the topmost."""
+
     def leave(self) -> None:
         """The layer goes, or another page takes its place: what it started is stopped."""
+
+    def changed(self) -> None:
+        """The document is another than when it was drawn last."""
 
     def tick(self) -> bool:
         """Look whether something that runs elsewhere has come to an end; whether there is something new to show."""

@@ -94,7 +94,7 @@ _TERMINAL = {
     "shade4": "bold red",
 }
 _COLOURLESS = {
-    **{name: "default on default" for name in _TERMINAL},
+    **dict.fromkeys(_TERMINAL, "default on default"),
     "dim": "dim",
     "line": "dim",
     "title": "bold",
