@@ -9,6 +9,7 @@ import numpy as np
 from coldbox.physics import constants, moist_air
 from coldbox.physics.doorway import doorway_flow
 from coldbox.physics.number import FloatArray
+from coldbox.record import Record
 from coldbox.timeline.packs import GAS_CONSTANT, GAS_SPECIFIC_HEAT, SUBLIMES_C
 from coldbox.timeline.types import Conditions, Network, State
 
@@ -23,7 +24,7 @@ AROUND_C: Final = 20.0  # carbon dioxide in the room around is turned into a vol
 
 
 class Joined:
-    """All that the room air touches through films: Σ heat to it is `fixed` - `per_k` (rise of the air)."""
+    """All that the room air touches: Σ heat to it is `fixed` - `per_k` (rise of the air)."""
 
     __slots__ = ("coldest_c", "films", "fixed", "per_k")
 
@@ -32,6 +33,13 @@ class Joined:
         self.per_k = np.zeros(draws)  # W/K
         self.films = np.zeros(draws)  # W/K, all films together
         self.coldest_c = np.full(draws, np.inf)
+
+    def copy(self) -> Joined:
+        """The same figures, to be added to."""
+        made = Joined(len(self.fixed))
+        for name in self.__slots__:
+            np.copyto(getattr(made, name), getattr(self, name))
+        return made
 
     def chain(self, film: FloatArray, constant: FloatArray, share: FloatArray, air_c: FloatArray) -> None:
         """Adds rows whose ends come to `constant` + `share` T_air, behind `film` (row, draw) W/K."""
@@ -44,7 +52,6 @@ class Joined:
         """Adds rows at `now_c` that rise by `u` + `v` (rise of the air), behind `film` (row, draw) W/K."""
         self.per_k += (film * (1.0 - v)).sum(axis=0)
         self.fixed += (film * (now_c - air_c + u)).sum(axis=0)
-        self.films += film.sum(axis=0)
 
     def colder(self, temperatures_c: FloatArray) -> None:
         """Notes surfaces (row, draw) on which water may settle."""
@@ -52,13 +59,16 @@ class Joined:
             np.minimum(self.coldest_c, temperatures_c.min(axis=0), out=self.coldest_c)
 
 
-class Exchanged:
-    """Flows of one step that cross the boundary with or through the air, W, once the air is known; all (draw,)."""
+class Balance(Record):
+    """The air's own side of a step: Σ heat is `fixed` - `per_k` (rise of the air); all (draw,)."""
 
-    __slots__ = ("flows", "machine", "rise")
-
-    def __init__(self, rise: FloatArray, flows: list[FloatArray], machine: FloatArray | None) -> None:
-        self.rise, self.flows, self.machine = rise, flows, machine
+    fixed: FloatArray  # W at the air of the start
+    per_k: FloatArray  # W/K
+    ratio: FloatArray  # kg/kg humidity ratio at the end
+    mass: FloatArray  # kg/s dry air in and out
+    came: FloatArray  # W with what came in
+    settled: FloatArray  # kg/s water that settles
+    settled_j: FloatArray  # J/kg it takes along
 
 
 class RoomAir:
@@ -94,14 +104,15 @@ class RoomAir:
         left = 1.0 - gas_volume / np.maximum(leak_volume, 1e-12)
         return np.asarray(now.leak * np.maximum(left, 0.0))
 
-    def step(
+    def comes(
         self, now: Conditions, state: State, joined: Joined, gas: FloatArray | None, step_s: float
-    ) -> Exchanged:  # fmt: skip
-        """Water and temperature at the end of the step, written into the state, with the flows that did it.
+    ) -> Balance:  # fmt: skip
+        """What comes to the air in a step but for walls, goods and packs, which `joined` gathers; and its water.
 
+        M (h_new - h_old)/Δt = came - m h_new + vapour + heat - settled + joined - machine, linear in the rise.
         gas: kg/s of carbon dioxide coming off dry ice, or None.
         """
-        old_c, old_ratio = state.air_c.copy(), state.humidity_ratio
+        old_c, old_ratio = state.air_c, state.humidity_ratio
         leak = self._leaks(now, state, gas)
         mass = leak.sum(axis=0)  # dry air in and out
         wet = (leak * now.leak_humidity_ratio).sum(axis=0)
@@ -114,39 +125,46 @@ class RoomAir:
             came = came + (door * moist_air.enthalpy(now.door_c, now.door_humidity_ratio)).sum(axis=0)
         ratio, settled, settled_j = self._water(now, state, joined, mass, wet, step_s)
 
-        # M (h_new - h_old)/Δt = came - m h_new + vapour + heat - settled + joined - machine, linear in the rise.
         dry = self.dry / step_s
         specific_heat = C_AIR + ratio * C_VAPOUR
         vapour = EVAPORATION + C_VAPOUR * old_c
-        fixed = joined.fixed + came + now.heat_w + now.moisture * vapour - settled * settled_j
+        fixed = came + now.heat_w + now.moisture * vapour - settled * settled_j
         fixed -= mass * (C_AIR * old_c + ratio * vapour)
         fixed -= dry * (ratio - old_ratio) * vapour
-        per_k = joined.per_k + (dry + mass) * specific_heat - now.moisture * C_VAPOUR
+        per_k = (dry + mass) * specific_heat - now.moisture * C_VAPOUR
         if len(now.extra):
             fixed += (now.extra * (now.extra_c - old_c)).sum(axis=0)
             per_k = per_k + now.extra.sum(axis=0)
         if gas is not None:
             fixed -= gas * GAS_SPECIFIC_HEAT * (old_c - SUBLIMES_C)
             per_k = per_k + gas * GAS_SPECIFIC_HEAT
-        machine = _machine(now, fixed, per_k, old_c)
-        rise = np.asarray((fixed if machine is None else fixed - machine) / per_k)
+        return Balance(fixed=fixed, per_k=per_k, ratio=ratio, mass=mass, came=came, settled=settled, settled_j=settled_j)
 
-        new_c = np.add(old_c, rise, out=state.air_c)
-        state.humidity_ratio = ratio
-        state.frost += settled * step_s
+    def rise(self, now: Conditions, state: State, balance: Balance, joined: Joined) -> tuple[FloatArray, FloatArray | None]:
+        """How much the air warms in the step, (draw,) K, and what the machine takes out, (draw,) W or None."""
+        fixed, per_k = balance.fixed + joined.fixed, balance.per_k + joined.per_k
+        machine = _machine(now, fixed, per_k, state.air_c)
+        return np.asarray((fixed if machine is None else fixed - machine) / per_k), machine
+
+    def settle(
+        self, now: Conditions, state: State, balance: Balance, rise: FloatArray, gas: FloatArray | None, step_s: float
+    ) -> list[FloatArray]:
+        """Writes the air of the step's end into the state; gives the flows that did it, each (draw,) W."""
+        new_c = np.add(state.air_c, rise)
+        state.air_c = new_c
+        state.humidity_ratio = ratio = balance.ratio
+        state.frost += balance.settled * step_s
         flows = [
-            came - mass * (C_AIR * new_c + ratio * (EVAPORATION + C_VAPOUR * new_c)),
+            balance.came - balance.mass * (C_AIR * new_c + ratio * (EVAPORATION + C_VAPOUR * new_c)),
             now.heat_w + now.moisture * (EVAPORATION + C_VAPOUR * new_c),
-            -settled * settled_j,
+            -balance.settled * balance.settled_j,
         ]
         if len(now.extra):
             flows.append((now.extra * (now.extra_c - new_c)).sum(axis=0))
         if gas is not None:
             flows.append(-gas * GAS_SPECIFIC_HEAT * (new_c - SUBLIMES_C))
-            self._carbon_dioxide(state, mass, gas, step_s)
-        if machine is not None:
-            flows.append(-machine)
-        return Exchanged(rise, flows, machine)
+            self._carbon_dioxide(state, balance.mass, gas, step_s)
+        return flows
 
     def _water(
         self, now: Conditions, state: State, joined: Joined, mass: FloatArray, wet: FloatArray, step_s: float

@@ -4,6 +4,9 @@ A step asks three things of a lot: from the state of now temperatures, potential
 that leaves the surface cell's rise as u + v (rise of the air); and, once that is known, all rises, from which the heat
 contents follow by the very slopes of the sweep, so that what flowed is what is stored. Between cells heat goes by the
 conduction potential, which never runs uphill when a cell freezes and conducts better.
+
+Where a slope did not hold for the whole way, through a melting point say, the step goes on from where it came to
+(Newton's method on the heat contents): the end of the step then agrees with itself, and nothing overshoots.
 """
 
 from __future__ import annotations
@@ -24,6 +27,7 @@ CELLS: Final = 20
 # How far beyond its points a rate of respiration is taken along (as physics.respiration has it); from there it stays.
 BELOW_K: Final = 30.0
 ABOVE_K: Final = 15.0
+HELD_K: Final = 1e-4  # a slope held when temperature came out as it had it, within this
 SURFACE_ROUNDS: Final = 20
 SURFACE_K: Final = 1e-6
 
@@ -158,8 +162,11 @@ class Bodies:
         self.respired = np.zeros((len(lots.living), draws))
         self.respiration = Respiration(lots)
         self._looked = False
+        self._expected = np.empty(shape)  # potentials as the slopes have them
+        self._before = np.empty(shape)  # heat contents at the start of the step
+        self._again = False
         self._melting = [Melting(curve, shape, lots.conductivity) for curve in lots.curves]
-        self._per_share = 1.0 / lots.share
+        self._allowed = HELD_K * lots.conductivity.sum(axis=0)
         # Conductances of a cell to both its neighbours; that of the last to the air is added at each step.
         self._both = np.zeros(lots.face.shape)
         self._both[:-1] += lots.face[:-1]
@@ -171,14 +178,19 @@ class Bodies:
 
     def look(self, content: FloatArray, air_c: FloatArray) -> None:
         """Everything of now from heat contents (cell, lot, draw) and the room air (draw,)."""
+        self._update(content)
+        self.meet(air_c)
+
+    def _update(self, content: FloatArray) -> None:
         for melting in self._melting:
             own = melting.rows
             melting.update(content[:, own], self.temperature[:, own], self.potential[:, own], self.slope[:, own])
-        if self.shape[1]:
-            self._surface(air_c)
+            self.last_k[own] = melting.conductivity(self.temperature[-1, own])
 
-    def _surface(self, air_c: FloatArray) -> None:
+    def meet(self, air_c: FloatArray) -> None:
         """Surfaces: film (T_air - T_s) = face (Φ(T_s) - Φ_last), by Newton's method from where they were."""
+        if not self.shape[1]:
+            return
         film, near = self.lots.film, self.lots.face[-1]
         last_c, last = self.temperature[-1], self.potential[-1]
         surface = self.surface_c
@@ -193,16 +205,22 @@ class Bodies:
             if np.abs(step).max() < SURFACE_K:
                 break
         # What joins the last cell to the air, per kelvin between them: the film and the way to it in series.
-        for melting in self._melting:
-            self.last_k[melting.rows] = melting.at(last_c[melting.rows])[1]
         between = last_c - surface
         alike = np.abs(between) < 1e-6
         through = np.where(alike, self.last_k, (last - potential) / np.where(alike, 1.0, between))
         through *= near
         np.divide(through * film, through + film, out=self.conductance)
 
+    def begin(self, content: FloatArray) -> None:
+        """Keeps the heat contents that the step starts from."""
+        self._before[:] = content
+        self._again = False
+
     def outward(self, content: FloatArray, air_c: FloatArray, step_s: float) -> tuple[FloatArray, FloatArray]:
-        """Sweep from the core to the surface: the last cell warms by u + v (rise of the air); both (lot, draw) in K."""
+        """Sweep from the core to the surface: the last cell warms by u + v (rise of the air); both (lot, draw) in K.
+
+        content: where the step has come to; air_c: of the start of the step, from which the air's rise counts.
+        """
         face, matrix, solved, work = self.lots.face, self._matrix, self._solved, self.work
         flow, diagonal = matrix[:, 0], matrix[:, 1]
         np.subtract(self.potential[1:], self.potential[:-1], out=work[:-1])
@@ -212,10 +230,10 @@ class Bodies:
         np.subtract(work[1:], work[:-1], out=flow[1:])
         if self.respiration.rows:
             self.respired = self.respiration.add(flow, self.lots.share, self.temperature)
-        np.multiply(flow, step_s * self._per_share, out=work)
-        for melting in self._melting:
-            own = melting.rows
-            melting.lessen(content[:, own], work[:, own], self.potential[:, own], self.slope[:, own])
+        if self._again:
+            np.subtract(content, self._before, out=work)
+            work *= self.lots.share / step_s
+            flow -= work
         np.multiply(self.slope, self.lots.share / step_s, out=diagonal)
         diagonal += self._both
         diagonal[-1] += self.conductance / self.last_k
@@ -230,13 +248,22 @@ class Bodies:
             np.divide(matrix[i, ::2], matrix[i, 1], out=solved[i])
         return solved[-1, 0] / self.last_k, solved[-1, 1] / -self.last_k
 
-    def inward(self, air_rise: FloatArray, content: FloatArray) -> None:
-        """Sweep back to the core with the rise of the air known; heat contents are written in place."""
+    def inward(self, air_rise: FloatArray, content: FloatArray) -> bool:
+        """Sweep back to the core with the rise of the air known; heat contents are written in place.
+
+        Gives whether the slopes held; temperatures, potentials and slopes are those of the new contents.
+        """
         solved, rise = self._solved, self.work
         beyond = air_rise
         for i in range(self.shape[0] - 1, -1, -1):
             np.multiply(solved[i, 1], beyond, out=rise[i])
             np.subtract(solved[i, 0], rise[i], out=rise[i])
             beyond = rise[i]
+        expected = np.add(self.potential, rise, out=self._expected)
         rise *= self.slope
         content += rise
+        self._update(content)
+        self._again = True
+        expected -= self.potential
+        np.abs(expected, out=expected)
+        return bool((expected.max(axis=0) <= self._allowed).all())

@@ -7,9 +7,7 @@ t_f, W/m (Kirchhoff's): heat between two cells is face (Φ_2 - Φ_1), whatever t
   k = q0 + q1 r + q2 r², so Φ = q0 (t - t_f) - q1 t_f ln r - q2 t_f (r - 1);
 - plateau: L and b w within w below t_f, b t below, c_a t above; k of thawed and frozen goods, their mean between.
 
-A step needs the slope de/dΦ. The slope of now would be wrong for what leaves a plateau within the step: the flow
-would be taken as if the plateau went on, and the temperature overshoot. So where the change foreseen from the flows of
-now crosses a kink (or runs far along Chen's curve while freezing) the smaller of slope and secant is taken.
+A step asks for the slope de/dΦ along which heat content and potential go together near where they are.
 """
 
 from __future__ import annotations
@@ -18,14 +16,12 @@ from collections.abc import Sequence
 from typing import Final
 
 import numpy as np
-from numpy.typing import NDArray
 
 from coldbox.physics.number import FloatArray, Number
 from coldbox.physics.validity import within
 from coldbox.timeline.types import Curve, CurvePart
 
 NARROWEST_K: Final = 0.01  # a plateau needs some width for its curve to have an inverse
-FAR: Final = 0.05  # share of its distance from 0 °C that frozen goods may cool in a step on one slope
 NO_CONDUCTION: Final = np.array([1.0, 0.0, 0.0]).reshape(3, 1, 1)  # of a lump: its potential is its temperature
 _BLOCK: Final = "Heat content of goods and packs"
 
@@ -103,7 +99,6 @@ class Melting:
         self.per_above, self.per_below = 1.0 / self.above, 1.0 / self.below
         own = (*shape[:-2], curve.count, shape[-1])
         self._work, self._cold, self._thawed_share = np.empty(own), np.empty(own), np.empty(own)
-        self._any_warm = True  # whether anything may be above its freezing point
         q0, q1, q2 = conductivity if conductivity is NO_CONDUCTION else conductivity[:, self.rows]
         self.q0, self.q1, self.q2 = q0, q1, q2
         self.k_warm, self.k_cold = q0 + q1 + q2, np.asarray(q0)
@@ -113,8 +108,6 @@ class Melting:
             self.middle = self.half * (self.below * self.point + self.latent)
             self.root = self.latent * self.point / self.below
             self.sharp = -self.latent / self.point
-            # Chen's |c t| is nowhere below this, so a smaller change is never a far one.
-            self.gentle = -FAR * float(np.min(2.0 * np.sqrt(self.below * self.latent * np.abs(self.point))))
 
     def update(self, content: FloatArray, temperature: FloatArray, potential: FloatArray, slope: FloatArray) -> None:
         """Temperature °C, potential W/m and slope de/dΦ of (…, row, draw) contents, written in place."""
@@ -126,7 +119,7 @@ class Melting:
         self, content: FloatArray, temperature: FloatArray, potential: FloatArray, slope: FloatArray
     ) -> None:
         work, r = self._work, self._thawed_share
-        self._any_warm = warm = bool(content.max() > 0.0)
+        warm = bool(content.max() > 0.0)
         cold = np.minimum(content, 0.0, out=self._cold) if warm else content
         np.multiply(cold, self.half, out=work)
         work += self.middle
@@ -188,68 +181,22 @@ class Melting:
         """Share of a plateau's heat that is still to be taken up, 0..1, of (row, draw) contents."""
         return np.asarray(np.clip(-content / self.plateau, 0.0, 1.0))
 
+    def conductivity(self, temperature: FloatArray) -> FloatArray:
+        """W/mK at (row, draw) temperatures °C."""
+        if self.chen:
+            r = self.point / np.minimum(temperature, self.point)
+            return np.asarray(self.q0 + r * (self.q1 + r * self.q2))
+        past = temperature - self.point
+        return np.where(past >= 0.0, self.k_warm, np.where(past > -self.over, self.k_melting, self.k_cold))
+
     def at(self, temperature: FloatArray) -> tuple[FloatArray, FloatArray]:
         """Potential W/m and conductivity W/mK at (row, draw) temperatures °C."""
-        past = temperature - self.point
+        past, k = temperature - self.point, self.conductivity(temperature)
         warm = np.maximum(past, 0.0)
         if self.chen:
             r = self.point / np.minimum(temperature, self.point)
-            k = self.q0 + r * (self.q1 + r * self.q2)
             cold = self.q0 * (past - warm) - self.point * (self.q1 * np.log(r) + self.q2 * (r - 1.0))
             return self.k_warm * warm + cold, k
         melting = np.clip(past, -self.over, 0.0)
-        k = np.where(past >= 0.0, self.k_warm, np.where(past > -self.over, self.k_melting, self.k_cold))
         cold = self.k_melting * melting + self.k_cold * (past - warm - melting)
         return self.k_warm * warm + cold, k
-
-    def lessen(self, content: FloatArray, change: FloatArray, potential: FloatArray, slope: FloatArray) -> None:
-        """The slope, in place, made the secant where `change` (J/kg, foreseen) leaves what the slope holds for."""
-        if not content.size:
-            return
-        work, kinked = np.add(content, change, out=self._work), None
-        if not self.chen or self._any_warm:
-            np.multiply(work, content, out=self._cold)
-            if self._cold.min() < 0.0:
-                kinked = self._cold < 0.0
-        elif work.max() > 0.0:
-            kinked = work > 0.0
-        if self.chen:
-            if change.min() < self.gentle:
-                far = (content <= 0.0) & (change < self.gentle)
-                kinked = far if kinked is None else kinked | far
-        else:
-            work += self.plateau
-            np.add(content, self.plateau, out=self._cold)
-            work *= self._cold
-            if work.min() < 0.0:
-                crossed = work < 0.0
-                kinked = crossed if kinked is None else kinked | crossed
-        if kinked is not None:
-            self._secant(np.nonzero(kinked), content, change, potential, slope)
-
-    def _secant(
-        self, where: tuple[NDArray[np.intp], ...], content: FloatArray, change: FloatArray, potential: FloatArray,
-        slope: FloatArray,
-    ) -> None:  # fmt: skip
-        step = change[where]
-        then = content[where] + step
-
-        def figure(array: FloatArray) -> FloatArray:
-            return np.asarray(np.broadcast_to(array, content.shape)[where])
-
-        cold = np.minimum(then, 0.0)
-        found = np.maximum(then, 0.0) * figure(self.per_above * self.k_warm)
-        if self.chen:
-            point = figure(self.point)
-            middle = cold * figure(self.half) + figure(self.middle)
-            temperature = middle - np.sqrt(middle * middle - figure(self.root))
-            r = point / temperature
-            found += figure(self.q0) * (temperature - point)
-            found -= point * (figure(self.q1) * np.log(r) + figure(self.q2) * (r - 1.0))
-        else:
-            melting = np.maximum(cold, -figure(self.plateau))
-            found += melting * figure(self.over / self.plateau * self.k_melting)
-            found += (cold - melting) * figure(self.per_below * self.k_cold)
-        rise = np.abs(found - potential[where])
-        secant = np.abs(step) / np.maximum(rise, 1e-30)
-        slope[where] = np.minimum(slope[where], secant)

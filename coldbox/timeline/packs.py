@@ -11,7 +11,7 @@ from coldbox.physics import constants
 from coldbox.physics.number import FloatArray
 from coldbox.physics.validity import within
 from coldbox.timeline import curves
-from coldbox.timeline.bodies import contents
+from coldbox.timeline.bodies import HELD_K, contents
 from coldbox.timeline.curves import Melting, rows
 from coldbox.timeline.types import PackPart, Packs
 
@@ -64,6 +64,7 @@ class Lumps:
         self.temperature, self.potential, self.slope = np.empty(shape), np.empty(shape), np.empty(shape)
         self._melting = [Melting(curve, shape) for curve in packs.curves]
         self._u, self._v = np.empty(shape[1:]), np.empty(shape[1:])
+        self._before = np.empty(shape[1:])
 
     def look(self, content: FloatArray) -> None:
         """Temperatures and slopes of now from the heat contents (pack, draw)."""
@@ -75,19 +76,23 @@ class Lumps:
         """Share of each pack that is frozen, (pack, draw)."""
         return np.concatenate([melting.frozen(content[melting.rows]) for melting in self._melting])
 
+    def begin(self, content: FloatArray) -> None:
+        """Keeps the heat contents that the step starts from."""
+        self._before = content.copy()
+
     def outward(self, content: FloatArray, air_c: FloatArray, step_s: float) -> tuple[FloatArray, FloatArray]:
-        """Rise of each pack as u + v (rise of the air), both (pack, draw)."""
-        flow = self.exchange * (air_c - self.temperature[0])
-        change = (flow * step_s)[None]
-        for melting in self._melting:
-            own = melting.rows
-            melting.lessen(content[None, own], change[:, own], self.potential[:, own], self.slope[:, own])
+        """Rise of each pack as u + v (rise of the air), both (pack, draw), from where the step has come to."""
+        flow = self.exchange * (air_c - self.temperature[0]) - (content - self._before) / step_s
         diagonal = self.slope[0] / step_s + self.exchange
         return np.divide(flow, diagonal, out=self._u), np.divide(self.exchange, diagonal, out=self._v)
 
-    def inward(self, air_rise: FloatArray, content: FloatArray) -> None:
-        """Heat contents, written in place, once the rise of the air is known."""
-        content += self.slope[0] * (self._u + self._v * air_rise)
+    def inward(self, air_rise: FloatArray, content: FloatArray) -> bool:
+        """Heat contents, written in place, once the rise of the air is known; gives whether the slopes held."""
+        rise = self._u + self._v * air_rise
+        expected = self.temperature[0] + rise
+        content += self.slope[0] * rise
+        self.look(content)
+        return bool((np.abs(expected - self.temperature[0]) <= HELD_K).all())
 
 
 class DryIce:

@@ -1,8 +1,9 @@
 """The engine: one step of everything, and the run over all steps of a plan.
 
-A step is linear: coefficients (conductances, slopes of heat content, door flows) are those of its start, temperatures
-in the flows those of its end. Walls are swept from outside and goods from the core until each is a line in the air's
-temperature; the air is solved; the sweeps go back. Heat contents then change by exactly what flowed.
+Conductances and door flows of a step are those of its start, temperatures in the flows those of its end. Walls are
+swept from outside and goods from the core until each is a line in the air's temperature; the air is solved; the sweeps
+go back. Where something melted on the way, goods and air are solved again from where they came to. Heat contents change
+by exactly what flowed.
 """
 
 from __future__ import annotations
@@ -14,13 +15,14 @@ import numpy as np
 from coldbox.errors import Stopped
 from coldbox.physics.number import FloatArray, Number
 from coldbox.timeline import curves, steps, walls
-from coldbox.timeline.air import Joined, RoomAir
+from coldbox.timeline.air import Balance, Joined, RoomAir
 from coldbox.timeline.bodies import Bodies
 from coldbox.timeline.packs import SUBLIMATION, SUBLIMES_C, DryIce, Lumps
 from coldbox.timeline.trace import Eyes, Record
 from coldbox.timeline.types import Change, Conditions, Curve, Drivers, Network, Plan, State, Trace
 from coldbox.timeline.walls import Chains
 
+ROUNDS: Final = 12  # of a step; what is left over then is in the next step's flows
 ASK_EVERY: Final = 8  # steps between two looks at whether to go on
 
 
@@ -72,6 +74,7 @@ class _Run:
         self.eyes = Eyes(network, tuple(plan.signals), self.bodies, self.lumps, self.air)
         self.record = Record(network, plan)
         self.heat_in, self.moved, self.machine_j = np.zeros(draws), np.zeros(draws), np.zeros(draws)
+        self.rounds = 0
         self._all_there = False
 
     def all(self, instants: list[float]) -> Trace:
@@ -87,7 +90,7 @@ class _Run:
                 raise Stopped
             content, mass = state.pack_content.copy(), state.pack_mass.copy()
             self._step(self.drivers.during(now, instant), instant - now)
-            self._look()
+            self.bodies.meet(state.air_c)
             record.step(now, instant, self.eyes.look(state))
             record.packs(now, instant, content, mass, state)
             now = instant
@@ -101,7 +104,7 @@ class _Run:
         self.lumps.look(self.state.pack_content[: self.lumps.count])
 
     def _step(self, now: Conditions, step_s: float) -> None:
-        """One step of everything."""
+        """One step of everything, in rounds until goods and packs end where their slopes have them."""
         state, bodies, lumps = self.state, self.bodies, self.lumps
         air_c = state.air_c
         joined = Joined(self.network.draws)
@@ -109,35 +112,56 @@ class _Run:
             constant, share = group.inward(now, step_s, wall_c, surface_c)
             joined.chain(group.inner, constant, share, air_c)
             joined.colder(wall_c[-1])
-        pack_mass = state.pack_mass[: lumps.count]
-        if bodies.shape[1]:
-            u, v = bodies.outward(state.lot_content, air_c, step_s)
-            joined.rising(state.lot_mass * bodies.conductance, bodies.temperature[-1], u, v, air_c)
-            joined.colder(self._there(bodies.temperature[-1], state.lot_mass))
-        if lumps.count:
-            u, v = lumps.outward(state.pack_content[: lumps.count], air_c, step_s)
-            joined.rising(pack_mass * lumps.exchange, lumps.temperature[0], u, v, air_c)
-            joined.colder(self._there(lumps.temperature[0], pack_mass))
         gas, conductance = self._ice(joined, air_c, step_s)
+        self._settling(joined)
+        balance = self.air.comes(now, state, joined, gas, step_s)
+        rise, machine = self._goods(now, balance, joined, step_s)
 
-        known = self.air.step(now, state, joined, gas, step_s)
-
-        flows = known.flows
+        flows = self.air.settle(now, state, balance, rise, gas, step_s)
         for group, wall_c, surface_c in zip(self.walls, state.wall_c, state.surface_c, strict=True):
             flows.append(group.outward(state.air_c, wall_c, surface_c).sum(axis=0))
-        if bodies.shape[1]:
-            bodies.inward(known.rise, state.lot_content)
-            for row, heat in zip(self.network.lots.living, bodies.respired, strict=True):
-                flows.append(state.lot_mass[row] * heat)
-        if lumps.count:
-            lumps.inward(known.rise, state.pack_content[: lumps.count])
+        for row, heat in zip(self.network.lots.living, bodies.respired, strict=True):
+            flows.append(state.lot_mass[row] * heat)
         if conductance is not None:
             state.pack_mass[lumps.count :] -= conductance * (state.air_c - SUBLIMES_C) * (step_s / SUBLIMATION)
+        if machine is not None:
+            flows.append(-machine)
+            self.machine_j += machine * step_s
         for flow in flows:
             self.heat_in += flow * step_s
             self.moved += np.abs(flow) * step_s
-        if known.machine is not None:
-            self.machine_j += known.machine * step_s
+
+    def _settling(self, joined: Joined) -> None:
+        """Adds goods and packs as surfaces on which water may settle."""
+        state, bodies, lumps = self.state, self.bodies, self.lumps
+        pack_mass = state.pack_mass[: lumps.count]
+        joined.films += (state.lot_mass * bodies.conductance).sum(axis=0) + (pack_mass * lumps.exchange).sum(axis=0)
+        joined.colder(self._there(bodies.temperature[-1], state.lot_mass))
+        joined.colder(self._there(lumps.temperature[0], pack_mass))
+
+    def _goods(
+        self, now: Conditions, balance: Balance, joined: Joined, step_s: float
+    ) -> tuple[FloatArray, FloatArray | None]:
+        """Goods and packs with the air that they end with: writes their heat contents, gives the air's rise."""
+        state, bodies, lumps, air_c = self.state, self.bodies, self.lumps, self.state.air_c
+        pack_mass, packed = state.pack_mass[: lumps.count], state.pack_content[: lumps.count]
+        bodies.begin(state.lot_content)
+        lumps.begin(packed)
+        for _ in range(ROUNDS):
+            with_goods = joined.copy()
+            if bodies.shape[1]:
+                u, v = bodies.outward(state.lot_content, air_c, step_s)
+                with_goods.rising(state.lot_mass * bodies.conductance, bodies.temperature[-1], u, v, air_c)
+            if lumps.count:
+                u, v = lumps.outward(packed, air_c, step_s)
+                with_goods.rising(pack_mass * lumps.exchange, lumps.temperature[0], u, v, air_c)
+            rise, machine = self.air.rise(now, state, balance, with_goods)
+            held = lumps.inward(rise, packed) if lumps.count else True
+            held = (bodies.inward(rise, state.lot_content) if bodies.shape[1] else True) and held
+            self.rounds += 1
+            if held:
+                break
+        return rise, machine
 
     def _ice(
         self, joined: Joined, air_c: FloatArray, step_s: float
@@ -149,6 +173,7 @@ class _Run:
         conductance = self.dry_ice.outward(mass, air_c, step_s)
         nothing = np.zeros((1, 1))
         joined.rising(conductance, np.full((1, 1), SUBLIMES_C), nothing, nothing, air_c)
+        joined.films += conductance.sum(axis=0)
         joined.colder(np.where(mass > 0.0, SUBLIMES_C, np.inf))
         return (conductance * (air_c - SUBLIMES_C)).sum(axis=0) / SUBLIMATION, conductance
 
