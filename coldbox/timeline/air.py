@@ -19,6 +19,8 @@ C_WATER: Final = float(constants.SPECIFIC_HEAT_WATER)
 C_ICE: Final = float(constants.SPECIFIC_HEAT_ICE)
 EVAPORATION: Final = float(constants.LATENT_EVAPORATION)
 FUSION: Final = float(constants.LATENT_FUSION)
+R_AIR: Final = float(constants.GAS_CONSTANT_DRY_AIR)
+MASS_RATIO: Final = float(constants.WATER_TO_AIR_MASS)
 ZERO: Final = float(constants.ZERO_CELSIUS)
 AROUND_C: Final = 20.0  # carbon dioxide in the room around is turned into a volume at this temperature
 
@@ -99,9 +101,9 @@ class RoomAir:
         """Dry air through leaks, (leak, draw) kg/s; cold gas keeps out as much as it has volume."""
         if gas is None or not len(now.leak):
             return now.leak
-        gas_volume = gas * GAS_CONSTANT * (state.air_c + ZERO) / self.network.pressure
-        leak_volume = now.leak.sum(axis=0) * self.network.volume / self.dry
-        left = 1.0 - gas_volume / np.maximum(leak_volume, 1e-12)
+        # At the room's temperature and pressure a kg of the gas fills as much as so many kg of dry air with its vapour.
+        alike = GAS_CONSTANT / (R_AIR * (1.0 + state.humidity_ratio / MASS_RATIO))
+        left = 1.0 - gas * alike / np.maximum(now.leak.sum(axis=0), 1e-12)
         return np.asarray(now.leak * np.maximum(left, 0.0))
 
     def comes(
@@ -138,9 +140,13 @@ class RoomAir:
         if gas is not None:
             fixed -= gas * GAS_SPECIFIC_HEAT * (old_c - SUBLIMES_C)
             per_k = per_k + gas * GAS_SPECIFIC_HEAT
-        return Balance(fixed=fixed, per_k=per_k, ratio=ratio, mass=mass, came=came, settled=settled, settled_j=settled_j)
+        return Balance(
+            fixed=fixed, per_k=per_k, ratio=ratio, mass=mass, came=came, settled=settled, settled_j=settled_j
+        )
 
-    def rise(self, now: Conditions, state: State, balance: Balance, joined: Joined) -> tuple[FloatArray, FloatArray | None]:
+    def rise(
+        self, now: Conditions, state: State, balance: Balance, joined: Joined
+    ) -> tuple[FloatArray, FloatArray | None]:
         """How much the air warms in the step, (draw,) K, and what the machine takes out, (draw,) W or None."""
         fixed, per_k = balance.fixed + joined.fixed, balance.per_k + joined.per_k
         machine = _machine(now, fixed, per_k, state.air_c)

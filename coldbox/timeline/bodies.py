@@ -15,6 +15,7 @@ from collections.abc import Sequence
 from typing import Final
 
 import numpy as np
+from numpy.typing import NDArray
 
 from coldbox.physics.number import FloatArray, Number
 from coldbox.physics.validity import within
@@ -27,6 +28,7 @@ CELLS: Final = 20
 # How far beyond its points a rate of respiration is taken along (as physics.respiration has it); from there it stays.
 BELOW_K: Final = 30.0
 ABOVE_K: Final = 15.0
+GRADED: Final = 1.5
 HELD_K: Final = 1e-4  # a slope held when temperature came out as it had it, within this
 SURFACE_ROUNDS: Final = 20
 SURFACE_K: Final = 1e-6
@@ -50,13 +52,13 @@ def stack(parts: Sequence[LotPart], draws: int, cells: int = CELLS) -> Lots:
         )
     share = np.zeros((cells, len(parts), 1))
     face = np.zeros((cells, len(parts), draws))
-    edges = np.linspace(0.0, 1.0, cells + 1)
+    # Thinner towards the surface, where temperatures change first and most.
+    edges = 1.0 - np.linspace(1.0, 0.0, cells + 1) ** GRADED
     for i, part in enumerate(parts):
         power = POWERS[part.shape]
         share[:, i, 0] = np.diff(edges**power)
-        # Face area per kg of the lot over the distance of centres; the last face is half a cell away.
-        area = power * edges[1:] ** (power - 1) * cells
-        area[-1] *= 2.0
+        # Face area per kg of the lot over the distance of centres, the last to the surface.
+        area = power * edges[1:] ** (power - 1) / np.diff(np.append(0.5 * (edges[1:] + edges[:-1]), 1.0))
         face[:, i] = area[:, None] / np.ravel(part.density * np.square(part.half_thickness))
     groups = curves.stack([part.curve for part in parts], draws)
     return Lots(
@@ -248,10 +250,10 @@ class Bodies:
             np.divide(matrix[i, ::2], matrix[i, 1], out=solved[i])
         return solved[-1, 0] / self.last_k, solved[-1, 1] / -self.last_k
 
-    def inward(self, air_rise: FloatArray, content: FloatArray) -> bool:
-        """Sweep back to the core with the rise of the air known; heat contents are written in place.
+    def inward(self, air_rise: FloatArray, moving: NDArray[np.bool_], content: FloatArray) -> NDArray[np.bool_]:
+        """Sweep back to the core with the rise of the air known; heat contents of `moving` draws written in place.
 
-        Gives whether the slopes held; temperatures, potentials and slopes are those of the new contents.
+        Gives the draws whose slopes held; temperatures, potentials and slopes are those of the new contents.
         """
         solved, rise = self._solved, self.work
         beyond = air_rise
@@ -259,11 +261,13 @@ class Bodies:
             np.multiply(solved[i, 1], beyond, out=rise[i])
             np.subtract(solved[i, 0], rise[i], out=rise[i])
             beyond = rise[i]
+        if self._again:
+            rise *= moving
+        self._again = True
         expected = np.add(self.potential, rise, out=self._expected)
         rise *= self.slope
         content += rise
         self._update(content)
-        self._again = True
         expected -= self.potential
         np.abs(expected, out=expected)
-        return bool((expected.max(axis=0) <= self._allowed).all())
+        return np.asarray((expected.max(axis=0, initial=0.0) <= self._allowed).all(axis=0))

@@ -13,7 +13,7 @@ from coldbox.scene.types import Surface
 from coldbox.tables import load
 from coldbox.timeline.types import Network, State, WallLayer, WallPart
 
-CELLS: Final = 8  # of a wall
+CELLS: Final = 12  # of a wall
 GROUND_CELLS: Final = 20
 # The ground under a floor is cut into layers, each so many times as thick as the one above it.
 GROUND_LAYERS: Final = 6

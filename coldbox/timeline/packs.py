@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from typing import Final
 
 import numpy as np
+from numpy.typing import NDArray
 
 from coldbox.physics import constants
 from coldbox.physics.number import FloatArray
@@ -86,13 +87,13 @@ class Lumps:
         diagonal = self.slope[0] / step_s + self.exchange
         return np.divide(flow, diagonal, out=self._u), np.divide(self.exchange, diagonal, out=self._v)
 
-    def inward(self, air_rise: FloatArray, content: FloatArray) -> bool:
-        """Heat contents, written in place, once the rise of the air is known; gives whether the slopes held."""
-        rise = self._u + self._v * air_rise
+    def inward(self, air_rise: FloatArray, moving: NDArray[np.bool_], content: FloatArray) -> NDArray[np.bool_]:
+        """Heat contents of `moving` draws, written in place; gives the draws whose slopes held."""
+        rise = (self._u + self._v * air_rise) * moving
         expected = self.temperature[0] + rise
         content += self.slope[0] * rise
         self.look(content)
-        return bool((np.abs(expected - self.temperature[0]) <= HELD_K).all())
+        return np.asarray((np.abs(expected - self.temperature[0]) <= HELD_K).all(axis=0))
 
 
 class DryIce:

@@ -14,11 +14,12 @@ import numpy as np
 
 from coldbox.errors import Stopped
 from coldbox.physics.number import FloatArray, Number
-from coldbox.timeline import curves, steps, walls
+from coldbox.timeline import curves, walls
 from coldbox.timeline.air import Balance, Joined, RoomAir
 from coldbox.timeline.bodies import Bodies
 from coldbox.timeline.packs import SUBLIMATION, SUBLIMES_C, DryIce, Lumps
-from coldbox.timeline.trace import Eyes, Record
+from coldbox.timeline.steps import TOUCHING_S, Pace
+from coldbox.timeline.trace import Eyes, Record, paced
 from coldbox.timeline.types import Change, Conditions, Curve, Drivers, Network, Plan, State, Trace
 from coldbox.timeline.walls import Chains
 
@@ -51,11 +52,10 @@ def run(network: Network, drivers: Drivers, plan: Plan, state: State | None = No
     earlier run ended (left as it is), or None: as `start` makes it under the conditions of the first step.
     Raises Stopped when the plan's `go_on` says so, OutOfValidity where a method leaves its range.
     """
-    instants = steps.ends(plan)
+    pace = Pace(plan, [plan.signals[i] for i in paced(plan)])
     if state is None:
-        first = instants[0] if instants else plan.start_s + plan.step_s
-        state = start(network, drivers.during(plan.start_s, first))
-    return _Run(network, drivers, plan, state.copy()).all(instants)
+        state = start(network, drivers.during(plan.start_s, pace.next() or plan.start_s + plan.step_s))
+    return _Run(network, drivers, plan, state.copy()).all(pace)
 
 
 class _Run:
@@ -77,27 +77,30 @@ class _Run:
         self.rounds = 0
         self._all_there = False
 
-    def all(self, instants: list[float]) -> Trace:
+    def all(self, pace: Pace) -> Trace:
         plan, state, record = self.plan, self.state, self.record
         waiting = sorted(plan.changes, key=lambda change: change.at_s)
         stored = self._stored()
-        now = plan.start_s
+        now, count = plan.start_s, 0
         waiting = self._changes(waiting, now)
         first = record.now.copy()
         record.sample(now)
-        for count, instant in enumerate(instants):
-            if plan.go_on is not None and count % ASK_EVERY == 0 and not plan.go_on(count / len(instants)):
+        pace.begin(record.paced())
+        while (instant := pace.next()) is not None:
+            if plan.go_on is not None and count % ASK_EVERY == 0 and not plan.go_on(pace.share):
                 raise Stopped
             content, mass = state.pack_content.copy(), state.pack_mass.copy()
             self._step(self.drivers.during(now, instant), instant - now)
             self.bodies.meet(state.air_c)
             record.step(now, instant, self.eyes.look(state))
             record.packs(now, instant, content, mass, state)
-            now = instant
+            now, count = instant, count + 1
             record.sample(now)
-            if waiting and waiting[0].at_s <= now + steps.TOUCHING_S:
+            pace.took(now, record.paced())
+            if waiting and waiting[0].at_s <= now + TOUCHING_S:
                 waiting = self._changes(waiting, now)
-        return self._trace(len(instants), first, self._stored() - stored)
+                pace.begin(record.paced())
+        return self._trace(count, first, self._stored() - stored)
 
     def _look(self) -> None:
         self.bodies.look(self.state.lot_content, self.state.air_c)
@@ -135,8 +138,8 @@ class _Run:
         """Adds goods and packs as surfaces on which water may settle."""
         state, bodies, lumps = self.state, self.bodies, self.lumps
         pack_mass = state.pack_mass[: lumps.count]
-        joined.films += (state.lot_mass * bodies.conductance).sum(axis=0) + (pack_mass * lumps.exchange).sum(axis=0)
-        joined.colder(self._there(bodies.temperature[-1], state.lot_mass))
+        joined.films += (state.lot_mass * self.network.lots.film).sum(axis=0) + (pack_mass * lumps.exchange).sum(axis=0)
+        joined.colder(self._there(bodies.surface_c, state.lot_mass))
         joined.colder(self._there(lumps.temperature[0], pack_mass))
 
     def _goods(
@@ -147,6 +150,9 @@ class _Run:
         pack_mass, packed = state.pack_mass[: lumps.count], state.pack_content[: lumps.count]
         bodies.begin(state.lot_content)
         lumps.begin(packed)
+        rise = np.zeros_like(air_c)
+        machine: FloatArray | None = None
+        moving = np.ones(air_c.shape, dtype=bool)
         for _ in range(ROUNDS):
             with_goods = joined.copy()
             if bodies.shape[1]:
@@ -155,11 +161,14 @@ class _Run:
             if lumps.count:
                 u, v = lumps.outward(packed, air_c, step_s)
                 with_goods.rising(pack_mass * lumps.exchange, lumps.temperature[0], u, v, air_c)
-            rise, machine = self.air.rise(now, state, balance, with_goods)
-            held = lumps.inward(rise, packed) if lumps.count else True
-            held = (bodies.inward(rise, state.lot_content) if bodies.shape[1] else True) and held
+            found, taken = self.air.rise(now, state, balance, with_goods)
+            np.copyto(rise, found, where=moving)
+            if taken is not None:
+                machine = taken if machine is None else np.where(moving, taken, machine)
+            held = lumps.inward(rise, moving, packed) & bodies.inward(rise, moving, state.lot_content)
             self.rounds += 1
-            if held:
+            moving &= ~held
+            if not moving.any():
                 break
         return rise, machine
 
@@ -193,7 +202,7 @@ class _Run:
 
     def _changes(self, waiting: list[Change], now: float) -> list[Change]:
         """Applies what is due, looks again, and gives what still waits."""
-        while waiting and waiting[0].at_s <= now + steps.TOUCHING_S:
+        while waiting and waiting[0].at_s <= now + TOUCHING_S:
             self._change(waiting[0])
             waiting = waiting[1:]
         state = self.state

@@ -79,6 +79,12 @@ class Eyes:
         return None if there.all() else there
 
 
+def paced(plan: Plan) -> list[int]:
+    """The signals that set the pace: those with a limit, or else all temperatures."""
+    warmths = [i for i, signal in enumerate(plan.signals) if signal.what in ("air", "lot", "pack")]
+    return sorted({watch.signal for watch in plan.watches} or warmths)
+
+
 class Record:
     """Fills the figures of a Trace step by step."""
 
@@ -103,6 +109,11 @@ class Record:
         self.now = np.empty((signals, draws))
         self.present: NDArray[np.bool_] | None = None
         self._over = np.empty((0, draws))
+        self._paced = paced(plan)
+
+    def paced(self) -> FloatArray:
+        """The figures of the first draw that set the pace."""
+        return self.now[self._paced, 0].copy()
 
     def jump(self, at_s: float, values: FloatArray, present: NDArray[np.bool_] | None, state: State) -> None:
         """The signals of an instant, at the start or after something came or went."""

@@ -24,6 +24,7 @@ SIGMA: Final = float(constants.STEFAN_BOLTZMANN)
 # to step, so a settled surface is exact and the matrix never changes.
 SLOPE: Final = 4.0 * SIGMA * 300.0**3
 SLIGHT_K_PER_W: Final = 1e-9  # resistance between two cells that touch
+GRADED: Final = 1.5  # depths of the joints in a layer, from the room, are (i/n) to this power
 KEPT: Final = 64  # step lengths whose factors are kept
 
 _METHOD = "A wall in layers"
@@ -67,8 +68,9 @@ def _side_by_side(chains: Sequence[Sequence[Number]], draws: int) -> FloatArray:
 def chain(part: WallPart, cells: int) -> tuple[list[Number], list[Number]]:
     """Heat capacities of the cells of a wall, J/K, and the conductances before, between and after them, W/K.
 
-    Each layer that holds heat is cut into equal cells with half their resistance on either side; where there are more
-    cells than such layers, those are cut first whose cells are slowest (R C / n²). What holds none is resistance.
+    Each layer that holds heat is cut into cells with half their resistance on either side, thinner towards the room,
+    which is what is felt first; where there are more cells than such layers, those are cut first whose cells are
+    slowest (R C / n²) in the first draw. What holds no heat is resistance.
     """
     for layer in part.layers:
         for value, what in ((layer.resistance, "a layer's resistance"), (layer.capacity, "a layer's heat capacity")):
@@ -76,11 +78,11 @@ def chain(part: WallPart, cells: int) -> tuple[list[Number], list[Number]]:
     layers = part.layers or (WallLayer(resistance=0.0, capacity=0.0),)
     holds = [bool(np.any(layer.capacity)) for layer in layers]
     if not any(holds):
-        holds[int(np.argmax([np.max(layer.resistance) for layer in layers]))] = True
+        holds[int(np.argmax([_first(layer.resistance) for layer in layers]))] = True
     cut = [int(flag) for flag in holds]
     while sum(cut) < cells:
         slow = [
-            float(np.mean(layer.resistance)) * (float(np.mean(layer.capacity)) + 1e-9) / n**2 if n else -1.0
+            _first(layer.resistance) * (_first(layer.capacity) + 1e-9) / n**2 if n else -1.0
             for layer, n in zip(layers, cut, strict=True)
         ]
         cut[int(np.argmax(slow))] += 1
@@ -91,12 +93,16 @@ def chain(part: WallPart, cells: int) -> tuple[list[Number], list[Number]]:
         if not n:
             before = before + layer.resistance
             continue
-        for _ in range(n):
-            joints.append(1.0 / np.maximum(before + layer.resistance / (2 * n), SLIGHT_K_PER_W))
-            capacities.append(layer.capacity / n)
-            before = layer.resistance / (2 * n)
+        for share in np.diff(np.linspace(0.0, 1.0, n + 1) ** GRADED)[::-1]:
+            joints.append(1.0 / np.maximum(before + layer.resistance * share / 2.0, SLIGHT_K_PER_W))
+            capacities.append(layer.capacity * share)
+            before = layer.resistance * share / 2.0
     joints.append(1.0 / np.maximum(before + part.inside_film, SLIGHT_K_PER_W))
     return capacities, joints
+
+
+def _first(value: Number) -> float:
+    return float(np.ravel(value)[0])
 
 
 class Factors(Record):

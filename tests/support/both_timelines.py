@@ -9,11 +9,23 @@ import reference_timeline as ref
 
 from coldbox.timeline import bodies, packs, solver, walls
 from coldbox.timeline.types import (
-    Change, Conditions, ConductivityPart, CurvePart, Doors, LotPart, Network, PackPart, Plan, Signal, Trace, Watch,
-    WallLayer, WallPart,
+    Change,
+    Conditions,
+    ConductivityPart,
+    CurvePart,
+    Doors,
+    LotPart,
+    Network,
+    PackPart,
+    Plan,
+    Signal,
+    Trace,
+    WallLayer,
+    WallPart,
+    Watch,
 )  # fmt: skip
 
-WALL_CELLS = 8
+WALL_CELLS = 12
 # Three points of Gauss: the mean of a smooth drive over a step.
 POINTS = (0.5 - math.sqrt(0.15), 0.5, 0.5 + math.sqrt(0.15))
 WEIGHTS = (5.0 / 18.0, 8.0 / 18.0, 5.0 / 18.0)
