@@ -144,7 +144,7 @@ def _times(course: Course) -> list[float]:
     apart = next(step for until, step in APART_S if length <= until * HOUR_S)
     first = np.floor(course.start_s / apart) + 1.0
     found = {course.start_s, course.end_s, *(float(at) for at in np.arange(first * apart, course.end_s, apart))}
-    found |= {at for at in course.marks()} | {one.at_s for one in course.happenings}
+    found |= set(course.marks()) | {one.at_s for one in course.happenings}
     return sorted(at for at in found if course.start_s <= at <= course.end_s)
 
 

@@ -71,9 +71,8 @@ class Pace:
         """Tells that a step ended here with these watched figures (figure,) of the first draw."""
         step, self._now = end_s - self._now, end_s
         self._weigh(step, figures)
-        if self._stops and end_s >= self._stops[0][0] - TOUCHING_S:
-            if self._stops.pop(0)[1]:
-                self._restart()
+        if self._stops and end_s >= self._stops[0][0] - TOUCHING_S and self._stops.pop(0)[1]:
+            self._restart()
 
     def begin(self, figures: FloatArray) -> None:
         """Tells the watched figures at the start, and after something came or went."""

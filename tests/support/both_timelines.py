@@ -42,7 +42,8 @@ def network(box: ref.Box, draws: int = 1, wall_cells: int = WALL_CELLS, lot_cell
     """The box as the engine's network, the same in every draw."""
     wall_parts = [
         WallPart(
-            name=f"wall {i}", layers=tuple(WallLayer(resistance=x.resistance, capacity=x.capacity) for x in wall.layers),
+            name=f"wall {i}",
+            layers=tuple(WallLayer(resistance=x.resistance, capacity=x.capacity) for x in wall.layers),
             inside_film=1.0 / (wall.inside_h * wall.inside_area), radiating=wall.emissivity * wall.outside_area,
             cells=wall_cells,
         )

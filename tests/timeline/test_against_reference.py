@@ -152,11 +152,13 @@ def sun_on_a_roof():
     """A truck that stands in the yard: its roof absorbs and radiates, from midnight on."""
     outside = day(26.0, 7.0)
     roof = panel(
-        16.0, 0.07, outside, outside_h=10.0, sun=lambda t: 0.7 * max(0.0, 900.0 * math.sin(math.pi * (t / 3600.0 - 6) / 12)),
+        16.0, 0.07, outside, outside_h=10.0,
+        sun=lambda t: 0.7 * max(0.0, 900.0 * math.sin(math.pi * (t / 3600.0 - 6) / 12)),
         emissivity=0.9, sky_c=day(6.0, 6.0), ground_c=outside, sky_share=1.0,
     )  # fmt: skip
     front = panel(
-        12.0, 0.07, outside, outside_h=10.0, sun=lambda t: 0.5 * max(0.0, 600.0 * math.sin(math.pi * (t / 3600.0 - 6) / 7)),
+        12.0, 0.07, outside, outside_h=10.0,
+        sun=lambda t: 0.5 * max(0.0, 600.0 * math.sin(math.pi * (t / 3600.0 - 6) / 7)),
         emissivity=0.9, sky_c=day(6.0, 6.0), ground_c=day(30.0, 12.0), sky_share=0.5,
     )  # fmt: skip
     milk = ref.Body(
@@ -207,8 +209,9 @@ def pull_down():
     outside = day(28.0, 6.0)
     goods = ref.Body(800.0, 18.0, "cylinder", 0.08, 1000.0, 12.0, ref.chen(0.87, 0.02, -0.8), (0.55, -0.9, 0.0))
     box = ref.Box(
-        volume=35.0, start_c=20.0, humidity_ratio=0.6 * ref.saturated(20.0), walls=(panel(62.0, 0.08, outside), floor(14.0)),
-        bodies=(goods,), leaks=(leak(6.0, outside),), machine=lambda _: (2200.0, 3.0),
+        volume=35.0, start_c=20.0, humidity_ratio=0.6 * ref.saturated(20.0),
+        walls=(panel(62.0, 0.08, outside), floor(14.0)), bodies=(goods,), leaks=(leak(6.0, outside),),
+        machine=lambda _: (2200.0, 3.0),
     )  # fmt: skip
     signals = (AIR, ("core", 0), ("mean", 0), ("surface", 0))
     below = [ref.Limit(*x, above=False) for x in ((AIR, 8.0), (AIR, 3.1), (("mean", 0), 8.0), (("core", 0), 5.0))]
@@ -251,8 +254,8 @@ def moved():
 
     goods = ref.Body(60.0, 2.0, "slab", 0.08, 1000.0, 8.0, ref.chen(0.85, 0.04, -0.6), (0.5, -0.9, 0.0))
     box = ref.Box(
-        volume=1.0, start_c=2.0, humidity_ratio=0.8 * ref.saturated(2.0), walls=(panel(6.0, 0.05, outside),), bodies=(goods,),
-        leaks=(leak(1.0, outside, ref.steady(0.002)),), marks=marks,
+        volume=1.0, start_c=2.0, humidity_ratio=0.8 * ref.saturated(2.0), walls=(panel(6.0, 0.05, outside),),
+        bodies=(goods,), leaks=(leak(1.0, outside, ref.steady(0.002)),), marks=marks,
     )  # fmt: skip
     return Scenario(
         box, 30.0, (ref.Limit(AIR, 10.0), ref.Limit(("mean", 0), 6.0), ref.Limit(("surface", 0), 8.0)),

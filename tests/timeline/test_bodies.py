@@ -111,7 +111,7 @@ def test_error_of_the_series_falls_with_cells_and_steps(shape):
     ],
 )
 def test_printed_steel_balls(diameter, density, heat, k, film, start, air, seconds, expected):
-    """Lumped examples of two textbooks (Holman, Ex. 4.1; Geankoplis, Ex. 5.2-1), whose balls have small Biot numbers."""
+    """Lumped examples of two textbooks (Holman, Ex. 4.1; Geankoplis, Ex. 5.2-1): balls of small Biot numbers."""
     lot = chambers.lot(
         shape="sphere", half_thickness=diameter / 2, density=density, film=film, start_c=start,
         curve=chambers.sensible(heat), conductivity=ConductivityPart(warm=k, linear=0.0, square=0.0),
@@ -125,7 +125,8 @@ def test_printed_half_space():
     """Ground freezing from above (Geankoplis, Ex. 5.3-1): surface -5.2 °C with the exact error function."""
     film, k, diffusivity, at = 11.36, 0.865, 4.65e-7, 5 * 3600.0
     lot = chambers.lot(
-        half_thickness=0.8, density=1000.0, film=film, start_c=15.6, curve=chambers.sensible(k / (1000.0 * diffusivity)),
+        half_thickness=0.8, density=1000.0, film=film, start_c=15.6,
+        curve=chambers.sensible(k / (1000.0 * diffusivity)),
         conductivity=ConductivityPart(warm=k, linear=0.0, square=0.0),
     )  # fmt: skip
     beta = film * np.sqrt(diffusivity * at) / k
@@ -228,7 +229,8 @@ def test_curves_are_those_of_the_goods(chen):
     figures = {"water": 0.8, "protein": 0.18, "freezing_point_c": -1.0, "specific_heat_above": 3600.0}
     if not chen:
         figures = {
-            "specific_heat_above": 3600.0, "specific_heat_below": 1900.0, "latent_heat": 250e3, "freezing_point_c": -1.0,
+            "specific_heat_above": 3600.0, "specific_heat_below": 1900.0, "latent_heat": 250e3,
+            "freezing_point_c": -1.0,
         }  # fmt: skip
     enthalpy = food.enthalpy if chen else food.quoted_enthalpy
     slope_of = food.apparent_heat_capacity if chen else food.quoted_heat_capacity
