@@ -29,7 +29,7 @@ CELLS: Final = 20
 BELOW_K: Final = 30.0
 ABOVE_K: Final = 15.0
 GRADED: Final = 1.5
-HELD_K: Final = 1e-4  # a slope held when temperature came out as it had it, within this
+HELD_K: Final = 5e-4  # a slope held when temperature came out as it had it, within this
 SURFACE_ROUNDS: Final = 20
 SURFACE_K: Final = 1e-6
 
