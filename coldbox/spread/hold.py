@@ -11,16 +11,21 @@ from typing import TYPE_CHECKING, Any, Final
 
 import numpy as np
 
+from coldbox.account.cautions import standing
+from coldbox.account.load import load
 from coldbox.errors import ColdboxError, Stopped
 from coldbox.physics.number import FloatArray
 from coldbox.project.model import Project
 from coldbox.record import Record
+from coldbox.scene.build import build
+from coldbox.scene.finding import Finding
 from coldbox.spread.draws import Draws, draws
 from coldbox.spread.influence import Driver, drivers
 from coldbox.spread.inputs import left_out
 from coldbox.spread.percentiles import Chance, Percentiles, chance, percentiles
 from coldbox.timeline.network import Factors
 from coldbox.timeline.results import Kind, Outage
+from coldbox.units import show
 
 if TYPE_CHECKING:
     from multiprocessing.connection import Connection
@@ -65,6 +70,12 @@ def run(
     share done now and then; False stops. Result: the timeline's, single figures of the middle, arrays of the draws
     without it, `spread` a HoldSpread. Raises what the timeline raises; Stopped.
     """
+    project, said = _with_machine(project, kind)
+    found = _run(project, kind, count, seed, processes, block, go_on)
+    return found.replace(notes=(*said, *found.notes), findings=(*found.findings, *_standing(project)))
+
+
+def _run(project: Project, kind: Kind, count: int, seed: int, processes: int, block: int, go_on: GoOn | None) -> Outage:
     if count == 0:
         return engine(kind)(project, go_on=go_on)
     starts = range(1, count + 1, block)
@@ -80,13 +91,38 @@ def run(
 
 def engine(kind: Kind) -> Callable[..., Outage]:
     """The run of the timeline for a kind."""
+    from coldbox.timeline.outage import outage, pulldown, recovery
+    from coldbox.timeline.trip import trip
+
+    runs: dict[Kind, Callable[..., Outage]] = {
+        "outage": outage, "pulldown": pulldown, "recovery": recovery, "trip": trip,
+    }  # fmt: skip
+    return runs[kind]
+
+
+def _with_machine(project: Project, kind: Kind) -> tuple[Project, tuple[str, ...]]:
+    """The project with a machine where one runs and none is named: as large as the load asks for; and what to say."""
+    if project.machine.capacity is not None or not _runs(project, kind):
+        return project, ()
+    capacity = float(np.mean(load(project).required_capacity_w))
+    told = f"no machine is named: the {show(capacity, 'power', project.units)} that the load asks for are taken"
+    return project.replace(machine=project.machine.replace(capacity=capacity)), (told,)
+
+
+def _runs(project: Project, kind: Kind) -> bool:
+    """Whether a machine runs at some time of this."""
+    if not project.box.powered:
+        return False
     if kind == "trip":
-        from coldbox.timeline import trip
+        trip = project.trip
+        return trip is not None and (any(leg.power for leg in trip.legs) or any(stop.power for stop in trip.stops))
+    back = project.outage.lasts is not None or any(event.what == "power on" for event in project.outage.events)
+    return kind in ("pulldown", "recovery") or back
 
-        return trip.trip
-    from coldbox.timeline import outage
 
-    return {"outage": outage.outage, "pulldown": outage.pulldown, "recovery": outage.recovery}[kind]
+def _standing(project: Project) -> tuple[Finding, ...]:
+    """What is always said of such a box."""
+    return tuple(standing(build(project)))
 
 
 class _Job(Record):

@@ -22,7 +22,6 @@ FUSION: Final = float(constants.LATENT_FUSION)
 R_AIR: Final = float(constants.GAS_CONSTANT_DRY_AIR)
 MASS_RATIO: Final = float(constants.WATER_TO_AIR_MASS)
 ZERO: Final = float(constants.ZERO_CELSIUS)
-AROUND_C: Final = 20.0  # carbon dioxide in the room around is turned into a volume at this temperature
 
 
 class Joined:
@@ -192,24 +191,13 @@ class RoomAir:
         return ratio, settled, np.where(coldest < 0.0, C_ICE * coldest - FUSION, C_WATER * coldest)
 
     def _carbon_dioxide(self, state: State, mass: FloatArray, gas: FloatArray, step_s: float) -> None:
-        """Gas in the room air and in the room around at the end of the step, implicit."""
+        """Gas in the room air at the end of the step, implicit."""
         out = mass / self.dry + gas * (state.air_c + ZERO) / self.whole  # 1/s
         state.carbon_dioxide = (state.carbon_dioxide + gas * step_s) / (1.0 + out * step_s)
-        change = self.network.around_change
-        if change is not None:
-            state.around = (state.around + out * state.carbon_dioxide * step_s) / (1.0 + change * step_s)
 
     def carbon_dioxide_share(self, state: State) -> FloatArray:
         """Share of the room air's volume that is carbon dioxide."""
         return np.asarray(np.minimum(state.carbon_dioxide * (state.air_c + ZERO) / self.whole, 1.0))
-
-    def around_share(self, state: State) -> FloatArray:
-        """Share of the volume of the room around that is carbon dioxide; 0 where that volume is not known."""
-        volume = self.network.around_volume
-        if volume is None:
-            return np.zeros_like(state.around)
-        whole = volume * self.network.pressure / (GAS_CONSTANT * (AROUND_C + ZERO))
-        return np.asarray(np.minimum(state.around / whole, 1.0))
 
 
 def _machine(now: Conditions, fixed: FloatArray, per_k: FloatArray, air_c: FloatArray) -> FloatArray | None:

@@ -77,8 +77,8 @@ def rig(
 ) -> Rig:  # fmt: skip
     """The network of a project for a course.
 
-    scene: of the project as it stands at the start. start_c: of the room air. stock: "usual", with today's goods inside; "warm", only goods whose start temperature or
-    arrival temperature is told, at that.
+    scene: of the project as it stands at the start. start_c: of the room air. stock: "usual", with today's goods
+    inside; "warm", only goods whose start temperature or arrival temperature is told, at that.
     """
     unknown = Unknown()
     made = envelope(scene, faces_sky(project, [setting for _, setting in course.settings]), factors.films)
@@ -99,6 +99,7 @@ def rig(
         for body in all_bodies
     ]
     coolants = _coolants(scene, course, start_c, factors.films)
+    dry_ice = tuple(pack.name for pack in project.packs if sublimes(pack))
     rows = {part.name: place for place, part in enumerate(coolants)}
     room = scene.room
     humid = room if start_c is room.temperature_c else _as_moist(scene, start_c)
@@ -120,7 +121,7 @@ def rig(
         envelope=made,
         bodies=tuple(all_bodies),
         pack_rows=rows,
-        dry_ice=tuple(pack.name for pack in project.packs if sublimes(pack)),
+        dry_ice=dry_ice,
         changes=(*changes, *_pack_changes(project, course, rows, start_c)),
         assumed=tuple(unknown.said),
         lot_parts=tuple(parts),

@@ -66,13 +66,15 @@ def run(
     warm: bool = False,
     back_at_k: Number | None = None,
     series: bool = True,
+    times: bool = False,
     go_on: GoOn | None = None,
 ) -> Run:
     """A run of a project through a course.
 
     capacity_w: what the machine takes out while it runs; None: that of the project. warm: from a box as warm as its
     surroundings, with only goods that are put in warm. back_at_k: watches when the air first comes below its
-    temperature and so much more. series: whether to keep the figures through time. go_on: told the share done, False
+    temperature and so much more. series: whether to keep all figures through time; times: those of the limits at least.
+    go_on: told the share done, False
     stops. Raises BadProject, OutOfValidity, Stopped.
     """
     factors = Factors() if factors is None else factors
@@ -91,7 +93,7 @@ def run(
         changes=made.changes,
         signals=tuple(looks.signals),
         watches=tuple(looks.watches),
-        times_s=_times(course) if series else (),
+        times_s=_times(course) if series or times else (),
         go_on=go_on,
     )
     return Run(
@@ -130,9 +132,9 @@ def _warm_start(scene: Scene) -> Number:
         else:
             assert site is not None, "nothing on the ground without a site"
             behind = site.ground_temperature
-        if np.ndim(behind):
-            behind = np.mean(behind, axis=-1, keepdims=True)
-            behind = behind if behind.ndim > 1 else float(behind[0])
+        hours = np.asarray(behind)
+        if hours.ndim:
+            behind = np.mean(hours, axis=-1, keepdims=True) if hours.ndim > 1 else float(np.mean(hours))
         through = one.effective_area / one.resistance
         heat, whole = heat + through * behind, whole + through
     return heat / whole

@@ -41,7 +41,7 @@ def start(network: Network, now: Conditions) -> State:
         walls.steady(group, now, made.air_c, made.wall_c[-1], made.surface_c[-1])
     made.lot_content, made.lot_mass = network.lots.content.copy(), network.lots.mass.copy()
     made.pack_content, made.pack_mass = network.packs.content.copy(), network.packs.mass.copy()
-    made.frost, made.carbon_dioxide, made.around = np.zeros(draws), np.zeros(draws), np.zeros(draws)
+    made.frost, made.gas, made.carbon_dioxide = (np.zeros(draws) for _ in range(3))
     return made
 
 
@@ -126,7 +126,9 @@ class _Run:
         for row, heat in zip(self.network.lots.living, bodies.respired, strict=True):
             flows.append(state.lot_mass[row] * heat)
         if conductance is not None:
-            state.pack_mass[lumps.count :] -= conductance * (state.air_c - SUBLIMES_C) * (step_s / SUBLIMATION)
+            gone = conductance * (state.air_c - SUBLIMES_C) * (step_s / SUBLIMATION)
+            state.pack_mass[lumps.count :] -= gone
+            state.gas += gone.sum(axis=0)
         if machine is not None:
             flows.append(-machine)
             self.machine_j += machine * step_s

@@ -42,8 +42,6 @@ class Eyes:
                 found[i] = state.humidity_ratio
             elif signal.what == "carbon dioxide":
                 found[i] = self.air.carbon_dioxide_share(state)
-            elif signal.what == "around":
-                found[i] = self.air.around_share(state)
             else:
                 found[i] = self._pack(signal, state)
         return found

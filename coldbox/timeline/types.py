@@ -167,8 +167,6 @@ class Network(Record):
     pressure: FloatArray  # (draw,) Pa
     start_c: FloatArray  # (draw,) room air at the start
     start_humidity_ratio: FloatArray  # (draw,) kg/kg
-    around_volume: FloatArray | None = None  # (draw,) m³ of the room or cab around, for its carbon dioxide
-    around_change: FloatArray | None = None  # (draw,) 1/s
 
 
 # --- what drives it
@@ -222,7 +220,7 @@ class Change(Record):
 class Signal(Record):
     """One figure to look at: the air's temperature, a lot's, a pack's, …; `row` as handed in."""
 
-    what: Literal["air", "lot", "pack", "pack mass", "pack frozen", "humidity ratio", "carbon dioxide", "around"]
+    what: Literal["air", "lot", "pack", "pack mass", "pack frozen", "humidity ratio", "carbon dioxide"]
     where: Where = "mean"
     row: int = 0
 
@@ -239,7 +237,7 @@ class Watch(Record):
 class State:
     """Everything that changes from step to step, as arrays that are written in place."""
 
-    __slots__ = ("air_c", "around", "carbon_dioxide", "frost", "humidity_ratio", "lot_content", "lot_mass",
+    __slots__ = ("air_c", "carbon_dioxide", "frost", "gas", "humidity_ratio", "lot_content", "lot_mass",
                  "pack_content", "pack_mass", "surface_c", "wall_c")  # fmt: skip
 
     wall_c: list[FloatArray]  # of each group of walls (cell, wall, draw) °C
@@ -251,8 +249,8 @@ class State:
     air_c: FloatArray  # (draw,)
     humidity_ratio: FloatArray  # (draw,)
     frost: FloatArray  # (draw,) kg water settled since the start
+    gas: FloatArray  # (draw,) kg of dry ice turned into gas since the start
     carbon_dioxide: FloatArray  # (draw,) kg in the room air
-    around: FloatArray  # (draw,) kg in the room around
 
     def copy(self) -> State:
         """The same figures in arrays of their own."""
