@@ -119,6 +119,12 @@ class Melting:
         self, content: FloatArray, temperature: FloatArray, potential: FloatArray, slope: FloatArray
     ) -> None:
         work, r = self._work, self._thawed_share
+        if content.min() >= 0.0:
+            np.multiply(content, self.per_above, out=temperature)
+            np.multiply(temperature, self.k_warm, out=potential)
+            temperature += self.point
+            np.copyto(slope, self.above / self.k_warm)
+            return
         warm = bool(content.max() > 0.0)
         cold = np.minimum(content, 0.0, out=self._cold) if warm else content
         np.multiply(cold, self.half, out=work)
