@@ -1,9 +1,10 @@
 """The state a run begins with: walls of a day that repeats, goods as they have been since they came.
 
-A powered room: its air has been held at its temperature for days, until the walls repeat within a hundredth of a
-kelvin; a heated floor has settled. Stored goods are as warm as the room; what lives has its own heat in it, built up
-over ten days. Today's intake has cooled since it came, as a body of its own. A start temperature that is told rules.
-A box that nothing cools has its walls settled between its start temperature and the surroundings of the first hour.
+A powered room: its air has been held at its temperature for days, until the walls of the first draw repeat within a
+hundredth of a kelvin; a heated floor has settled. Stored goods are as warm as the room; what lives has its own heat in
+it, built up over ten days. Today's intake has cooled since it came, as a body of its own. A start temperature that is
+told rules. A box that nothing cools has its walls settled between its start temperature and the surroundings of the
+first hour.
 """
 
 from __future__ import annotations
@@ -48,7 +49,8 @@ def _walls(rig: Rig, hours: Hours, start_s: float, state: State) -> None:
         plan = Plan(start_s=start_s - day * DAY_S, end_s=start_s - (day - 1) * DAY_S, step_s=WALL_STEP_S)
         own = solver.run(alone, driver, plan, own).state
         moved = max(
-            (float(np.abs(one - other).max()) for one, other in zip(own.wall_c, before, strict=True)), default=0.0
+            (float(np.abs(one - other)[..., 0].max()) for one, other in zip(own.wall_c, before, strict=True)),
+            default=0.0,
         )
         if moved < REPEATS_K:
             break

@@ -199,12 +199,17 @@ class Bodies:
         if not self._looked:
             surface[:], self._looked = last_c, True
         potential, k = np.empty_like(surface), np.empty_like(surface)
+        moving = np.ones(surface.shape, dtype=bool)
         for _ in range(SURFACE_ROUNDS):
             for melting in self._melting:
-                potential[melting.rows], k[melting.rows] = melting.at(surface[melting.rows])
+                own = melting.rows
+                found, k[own] = melting.at(surface[own])
+                np.copyto(potential[own], found, where=moving[own])
             step = (film * (air_c - surface) - near * (potential - last)) / (film + near * k)
+            step *= moving
             surface += step
-            if np.abs(step).max() < SURFACE_K:
+            moving &= np.abs(step) >= SURFACE_K
+            if not moving.any():
                 break
         # What joins the last cell to the air, per kelvin between them: the film and the way to it in series.
         between = last_c - surface

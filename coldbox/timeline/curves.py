@@ -153,12 +153,11 @@ class Melting:
         slope += self.below
         slope /= work
         if warm:
-            np.copyto(slope, self.above / self.k_warm, where=content > 0.0)
-            np.subtract(content, cold, out=work)
-            work *= self.per_above
-            temperature += work
-            work *= self.k_warm
-            potential += work
+            thawed = content >= 0.0
+            np.copyto(slope, self.above / self.k_warm, where=thawed)
+            np.multiply(content, self.per_above, out=work)
+            np.multiply(work, self.k_warm, out=potential, where=thawed)
+            np.add(work, self.point, out=temperature, where=thawed)
 
     def _update_plateau(
         self, content: FloatArray, temperature: FloatArray, potential: FloatArray, slope: FloatArray

@@ -24,7 +24,7 @@ FREEZING_C: Final = 0.0
 
 def findings(found: Outcome) -> tuple[Finding, ...]:
     """Everything about this run, the middle of its draws."""
-    return (*_gas(found), *_spoiling(found), *_vaccine(found))
+    return (*_gas(found), *_still_warm(found), *_spoiling(found), *_vaccine(found))
 
 
 def _gas(found: Outcome) -> Iterator[Finding]:
@@ -77,6 +77,20 @@ def _too_much(ppm: float, where: str, at: str | None, path: str) -> Finding | No
 
 def _share(ppm: float) -> str:
     return f"{show(round(ppm, -2), 'count')} ppm" if ppm < 0.1 * PPM else f"{100.0 * ppm / PPM:.0f} %"
+
+
+def _still_warm(found: Outcome) -> Iterator[Finding]:
+    """Today's goods that the machine had not brought within their limits yet."""
+    for label in dict.fromkeys(one.body.label for one in found.run.still_warm if one.body is not None):
+        body = next(one.body for one in found.run.still_warm if one.body is not None and one.body.label == label)
+        yield Finding(
+            level="caution",
+            id="still-warm",
+            text=f"{label} has not come within its limit yet when the power goes: it is not counted above, and without"
+            " power it stays beyond it. Look at it first",
+            rule="common practice",
+            path=f"lots.{body.lot.name}",
+        )
 
 
 def _spoiling(found: Outcome) -> Iterator[Finding]:

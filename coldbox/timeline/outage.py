@@ -41,7 +41,7 @@ def recovery(
     if events.power_back_s(course) is None:
         text = 'A recovery needs the hour at which power is back: write how long the outage lasts, such as "12 h".'
         raise BadProject([Problem(text, file=project.file, path="outage.lasts")])
-    run = runs.run(project, course, factors=factors, series=series, times=True, go_on=go_on)
+    run = runs.run(project, course, factors=factors, series=series, go_on=go_on)
     found = Outcome(run, series=series)
     given = answers(found, "recovery", back=True)
     back = _last(found, given)
@@ -63,8 +63,7 @@ def pulldown(
         raise BadProject([Problem(text, file=project.file, path="box.powered")])
     course = events.powered_course(project, middle(project.outage.horizon))
     run = runs.run(
-        project, course, factors=factors, warm=True, back_at_k=project.machine.band / 2.0, series=series, times=True,
-        go_on=go_on,
+        project, course, factors=factors, warm=True, back_at_k=project.machine.band / 2.0, series=series, go_on=go_on,
     )  # fmt: skip
     found = Outcome(run, series=series)
     given = answers(found, "pulldown", back=True)

@@ -51,6 +51,7 @@ class Run(Record):
     plan: Plan
     trace: Trace
     limits: tuple[Watched, ...]
+    still_warm: tuple[Watched, ...]  # limits of today's goods that have not come within them yet: not counted
     guidance: tuple[Watched, ...]  # food-safety guidance, where it applies
     not_watched: tuple[str, ...]
     reached: int | None  # watch of the air's temperature coming down; None: not asked
@@ -66,14 +67,13 @@ def run(
     warm: bool = False,
     back_at_k: Number | None = None,
     series: bool = True,
-    times: bool = False,
     go_on: GoOn | None = None,
 ) -> Run:
     """A run of a project through a course.
 
     capacity_w: what the machine takes out while it runs; None: that of the project. warm: from a box as warm as its
     surroundings, with only goods that are put in warm. back_at_k: watches when the air first comes below its
-    temperature and so much more. series: whether to keep all figures through time; times: those of the limits at least.
+    temperature and so much more. series: whether to keep all figures through time, or those of the limits alone.
     go_on: told the share done, False
     stops. Raises BadProject, OutOfValidity, Stopped.
     """
@@ -93,22 +93,33 @@ def run(
         changes=made.changes,
         signals=tuple(looks.signals),
         watches=tuple(looks.watches),
-        times_s=_times(course) if series or times else (),
+        times_s=_times(course),
         go_on=go_on,
     )
+    trace = solver.run(made.network, hours, plan, state)
+    still = tuple(one for one in looks.limits if _still_beyond(one, trace))
     return Run(
         project=project,
         course=course,
         rig=made,
         hours=hours,
         plan=plan,
-        trace=solver.run(made.network, hours, plan, state),
-        limits=tuple(looks.limits),
+        trace=trace,
+        limits=tuple(one for one in looks.limits if one.watch not in {warm.watch for warm in still}),
+        still_warm=still,
         guidance=tuple(looks.guidance),
         not_watched=tuple(looks.not_watched),
         reached=reached,
         signals=looks.known,
     )
+
+
+def _still_beyond(one: Watched, trace: Trace) -> bool:
+    """Whether goods of the day's intake are yet to come within a limit when the run begins, in the first draw."""
+    if one.body is None or one.body.kind != "intake" or one.body.lot.start_temperature is not None:
+        return False
+    first, limit = float(trace.first[one.signal, 0]), middle(one.limit.limit_c)
+    return first > limit if one.limit.side == "above" else first < limit
 
 
 def _capacity(project: Project, course: Course, capacity_w: Number | None) -> Number | None:

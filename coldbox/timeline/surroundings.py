@@ -193,13 +193,13 @@ class _Day:
             air_c = air_c + added_degrees(self.scene, one)
         film = outside_conductance(one, self.films)
         if one.behind == "road" and self.day is not None and self.setting.speed > 0.0:
-            mean = float(np.mean(air_c))
+            mean = _day_mean(air_c)
             film = self.films * one.outside_area / panel.outside_film(self._wind(self.day), one.emissivity, mean)
         if not np.any(radiating):
             return _hours(air_c), film, nothing
         # A wall that at other times faces the sky radiates apart from its film: here to walls as warm as the air.
         kelvin = air_c + ZERO
-        linear = 4.0 * SIGMA * radiating * np.mean(kelvin) ** 3
+        linear = 4.0 * SIGMA * radiating * _day_mean(kelvin) ** 3
         convection = np.maximum(film - linear, LEAST_CONVECTION * film)
         return _hours(air_c), convection, _hours(SIGMA * radiating * kelvin**4)
 
@@ -223,6 +223,12 @@ class _Day:
         both, to_ground = void
         beneath = (to_ground * site.ground_temperature + (both - to_ground) * self.day.air.temperature_c) / both
         return _hours(beneath), 1.0 / (1.0 / film + 1.0 / both), np.zeros((24, 1))
+
+
+def _day_mean(hours: Number) -> Number:
+    """Mean of (…, 24) figures as (…, 1); a figure is its own."""
+    figures = np.asarray(hours)
+    return figures.mean(axis=-1, keepdims=True) if figures.ndim > 1 else float(figures.mean())
 
 
 def _walls(values: list[FloatArray]) -> FloatArray:
@@ -274,5 +280,5 @@ def _worst(scene: Scene, clock_h: tuple[float, float]) -> float | None:
         turned = [one.replace(azimuth=(bearing + TURN[one.face]) % 360.0) for one in walls]
         falls = _falls(turned, day, Setting())
         weight = stack([one.absorptance * one.outside_area + one.solar_gain * one.area for one in turned])
-        taken[place] = float((weight * falls).mean(axis=1).sum(axis=0) @ shares)
+        taken[place] = float(((weight * falls)[:, 0].sum(axis=0) * shares).sum())
     return float(bearings[int(np.argmax(taken))])

@@ -52,7 +52,7 @@ class Eyes:
             return np.asarray(self.bodies.surface_c[row])
         temperature = self.bodies.temperature[:, row]
         return np.asarray(
-            temperature[0] if signal.where == "core" else self.network.lots.share[:, row, 0] @ temperature
+            temperature[0] if signal.where == "core" else (self.network.lots.share[:, row] * temperature).sum(axis=0)
         )
 
     def _pack(self, signal: Signal, state: State) -> FloatArray:

@@ -193,13 +193,20 @@ class Chains:
 
 
 def steady(walls: Walls, now: Conditions, air_c: FloatArray, wall_c: FloatArray, surface_c: FloatArray) -> None:
-    """Writes the temperatures that walls settle at under lasting conditions and a lasting room air."""
+    """Writes the temperatures that walls settle at under lasting conditions and a lasting room air.
+
+    A draw that has settled stays as it is, however long the others take.
+    """
     chains = Chains(walls, surface_c.shape[-1])
     surface_c[:] = now.outside_c[chains.rows]
     wall_c[:] = 0.0
+    settled = np.zeros(surface_c.shape[-1], dtype=bool)
     for _ in range(200):
-        before = surface_c.copy()
+        surfaces, cells = surface_c.copy(), wall_c.copy()
         chains.inward(now, np.inf, wall_c, surface_c)
         chains.outward(air_c, wall_c, surface_c)
-        if np.max(np.abs(surface_c - before)) < 1e-10:
+        np.copyto(surface_c, surfaces, where=settled)
+        np.copyto(wall_c, cells, where=settled)
+        settled |= np.abs(surface_c - surfaces).max(axis=0, initial=0.0) < 1e-10
+        if settled.all():
             return
