@@ -126,7 +126,7 @@ def _happens(found: Outage) -> dict[float, list[str]]:
         if limit.back_at_h is not None:
             tell(limit.back_at_h, f"{place_of(limit)} back")
     for pack in found.packs:
-        if pack.spent_at_h is not None:
+        if pack.spent_at_h is not None and found.kind != "pulldown":
             tell(pack.spent_at_h, f"{pack.id} spent")
     return told
 

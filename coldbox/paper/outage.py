@@ -187,7 +187,8 @@ def _limits(found: Outage, system: System) -> Table:
         ]
         if spread is not None:
             place = next(at for at, other in enumerate(found.limits) if other is one)
-            row.append(eight_in_ten(spread.limits[place], found.horizon_h))
+            never = coming_back and when is None and not _beyond_at_end(one)
+            row.append("-" if never else eight_in_ten(spread.limits[place], found.horizon_h))
         rows.append(tuple(row))
     columns = [
         Column(title="lot", gives=True),

@@ -105,7 +105,7 @@ def _with_machine(project: Project, kind: Kind) -> tuple[Project, tuple[str, ...
     if project.machine.capacity is not None or not _runs(project, kind):
         return project, ()
     capacity = float(np.mean(load(project).required_capacity_w))
-    told = f"no machine is named: the {show(capacity, 'power', project.units)} that the load asks for are taken"
+    told = f"no machine is named: the {show(capacity, 'power', project.units, 3)} that the load asks for are taken"
     return project.replace(machine=project.machine.replace(capacity=capacity)), (told,)
 
 

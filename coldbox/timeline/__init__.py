@@ -7,11 +7,12 @@ Rules of the engine (a step of Δt takes the state from old to new; "new" in a f
 2. Floors are walls whose outermost layers are ground.
 3. The air holds heat and water: M dh/dt and M dW/dt, with the dry mass M of the start, h = 1006 t + W (2 501 000 +
    1860 t). Leaks and doors bring m (h' - h) and m (W' - W); doors after Gosney and Olama with the densities of now.
-   Water settles at the coldest of innermost wall cells, outermost goods cells and packs, as fast as films carry heat
+   Water settles at the coldest of innermost wall cells, surfaces of goods and packs, as fast as films carry heat
    (Lewis): β (W - W_s(t_coldest)) where that is positive, β = Σ of all conductances to the air ÷ 1006. It leaves the
    air's books with the enthalpy of ice (below 0 °C) or water at that temperature; its latent heat so stays in the air.
-4. A lot is N cells from core to surface, share dh/dt = Σ k face (T_next - T) + share respiration(T), its surface
-   behind film and wrap to the air. T follows from h by the goods' own curve.
+4. A lot is N cells from core to surface, share dh/dt = Σ face (Φ_next - Φ) + share respiration(T), Φ = ∫ k dT the
+   conduction potential, its surface behind film and wrap to the air. T and Φ follow from h by the goods' own curve.
+   Implicit, and solved in rounds until h, T and Φ at the end of the step agree: what only warms never cools.
 5. A pack is one lump with a curve of two lines and a plateau. Dry ice stays at -78.5 °C, its exchange falls with
    (mass left)^⅔; 571 kJ/kg go into gas, which warms from there to the room's temperature, keeps as much leakage out as
    it has volume, and leaves with the room air: carbon dioxide in and out is kept as a balance of its own.

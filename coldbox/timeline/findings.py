@@ -86,8 +86,7 @@ def _still_warm(found: Outcome) -> Iterator[Finding]:
         yield Finding(
             level="caution",
             id="still-warm",
-            text=f"{label} has not come within its limit yet when the power goes: it is not counted above, and without"
-            " power it stays beyond it. Look at it first",
+            text=f"{label} had not come within its limit when this begins: it is not counted above. Look at it first",
             rule="common practice",
             path=f"lots.{body.lot.name}",
         )

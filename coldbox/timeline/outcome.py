@@ -57,6 +57,7 @@ class Outcome:
         crossed = self.hours(trace.crossed_s[one.watch])
         returned = self.back(one) if back else None
         at, back_at = first_of(crossed), None if returned is None else first_of(returned)
+        back_at = back_at or None  # 0: never beyond
         body = one.body
         extreme = trace.highest if limit.side == "above" else trace.lowest
         comes = body is not None and body.kind == "coming"
