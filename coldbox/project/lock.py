@@ -211,7 +211,7 @@ def _quiet(side: str) -> float:
 
 
 def _server_time(side: str) -> float:
-    """The clock of the file server, s: that of a new file. Other hosts' clocks may be hours off; this one judges all."""
+    """The time of a new file, s: one clock, the file server's, judges all hosts, whose own may be hours off."""
     probe = f"{side}-{os.urandom(6).hex()}"
     _make(probe, b"")
     try:
