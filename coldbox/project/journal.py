@@ -56,8 +56,8 @@ def write(path: str | os.PathLike[str], document: Mapping[str, Any], stamp: Stam
     import tomli_w
 
     ours = holders.me()
-    target = os.path.realpath(path)
-    facts = {
+    target = _target(path)
+    facts: dict[str, Any] = {
         "path": target,
         "holder": dict(ours),
         **({} if stamp is None else {"stamp": dict(stamp)}),
@@ -93,14 +93,14 @@ def drop(path: str | os.PathLike[str], offered: Journal | None = None) -> None:
     path     the file
     offered  a journal that `find` gave and that is taken over or declined, forgotten too
     """
-    name = os.path.join(_folder(), f"{_of(os.path.realpath(path))}-{holders.me().session()}{_ENDING}")
+    name = os.path.join(_folder(), f"{_of(_target(path))}-{holders.me().session()}{_ENDING}")
     for left in (name, *(() if offered is None else (offered.file,))):
         with suppress(OSError):
             os.unlink(left)
 
 
 def _left(path: str | os.PathLike[str]) -> list[Journal]:
-    target, ours = os.path.realpath(path), holders.me().session()
+    target, ours = _target(path), holders.me().session()
     try:
         entries = [name for name in os.listdir(_folder()) if name.startswith(_of(target)) and name.endswith(_ENDING)]
     except OSError:
@@ -142,6 +142,13 @@ def _sealed(data: bytes) -> bytes:
     from hashlib import sha256
 
     return _SUM + sha256(data).hexdigest().encode() + b"\n" + data
+
+
+def _target(path: str | os.PathLike[str]) -> str:
+    try:
+        return whole.behind(os.fspath(path))
+    except OSError:  # its folder went away: the work is kept all the same
+        return os.path.abspath(path)
 
 
 def _folder() -> str:

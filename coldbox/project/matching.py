@@ -15,7 +15,7 @@ def same(one: Any, other: Any) -> bool:
         return len(one) == len(other) and all(map(same, one, other))
     if isinstance(one, str) and isinstance(other, str):  # also of a class of its own
         return str(one) == str(other)
-    return type(one) is type(other) and bool(one == other or one != one and other != other)  # not-a-number too
+    return type(one) is type(other) and bool(one == other or repr(one) == repr(other) == "nan")
 
 
 def matched(was: list[Any], now: list[Any]) -> list[tuple[int | None, int | None]]:

@@ -26,6 +26,28 @@ class Overtaken(OSError):
     """Others replaced the same file at the same moment, time and again."""
 
 
+def behind(path: str) -> str:
+    """The file that a name means: behind every link, also one that leads to a file that is not there yet.
+
+    path    any name
+    result  a name without links
+    raises  OSError; `os.path.realpath` would take a link that cannot be read for a file, and a save would replace it
+    """
+    try:
+        return os.path.realpath(path, strict=True)
+    except FileNotFoundError:
+        folder, name = os.path.split(path)
+        try:
+            leads = os.readlink(path)
+        except FileNotFoundError:
+            return os.path.join(os.path.realpath(folder or ".", strict=True), name)
+        except OSError as error:
+            if error.errno != errno.EINVAL:  # it is no link: it came to be this moment
+                raise
+            return os.path.realpath(path, strict=True)
+        return behind(os.path.join(folder, leads))
+
+
 def replace(
     target: str, data: bytes, check: Callable[[], None], *, previous: bool = True, mode: int = 0o666
 ) -> os.stat_result:
@@ -47,6 +69,9 @@ def replace(
         except (FileNotFoundError, FileExistsError):
             if not os.path.isdir(os.path.dirname(target) or "."):
                 raise
+        about = holds(target, data)
+        if about is not None:  # it was done: a server's answer may get lost, and its second one says "no such file"
+            return about
         time.sleep(0.006 * attempt * os.urandom(1)[0] / 255)
     raise Overtaken(errno.EBUSY, "others are saving it")
 
@@ -75,6 +100,21 @@ def _attempt(target: str, data: bytes, check: Callable[[], None], previous: bool
         for left in (fresh, kept):
             with suppress(OSError):
                 os.unlink(left)
+
+
+def holds(target: str, data: bytes) -> os.stat_result | None:
+    """Size, times and inode of a file that holds exactly `data`; None of another, or none.
+
+    target  the file
+    data    what it may hold
+    raises  OSError
+    """
+    try:
+        with builtins.open(target, "rb") as handle:
+            about = os.fstat(handle.fileno())
+            return about if about.st_size == len(data) and handle.read(len(data) + 1) == data else None
+    except FileNotFoundError:
+        return None
 
 
 def _family(name: str) -> str:
