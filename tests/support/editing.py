@@ -9,17 +9,20 @@ import errno
 import multiprocessing
 import os
 import random
+import sys
 import time
 import tomllib
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
 from multiprocessing.connection import Connection
+from types import ModuleType
 from typing import Any
 
 from coldbox.project import holder, journal, lock, store
 from coldbox.project.revise import revised
 
-PLACES = multiprocessing.get_context("forkserver")
-PLACES.set_forkserver_preload(["editing"])
+PLACES = multiprocessing.get_context("forkserver")  # a start takes milliseconds: everything is imported once
+PLACES.set_forkserver_preload(["editing", "difflib", "hashlib", "pwd", "tomli_w"])
 
 TEXT = """\
 format = 1
@@ -39,12 +42,10 @@ def with_count(document: dict[str, Any], number: int) -> dict[str, Any]:
 
 
 class Editor:
-    """One session. `conditions` make the world worse: "other host", "no links", "no locks"."""
+    """One session."""
 
-    def __init__(self, path: str, conditions: tuple[str, ...] = ()) -> None:
+    def __init__(self, path: str) -> None:
         self.path = path
-        for condition in conditions:
-            CONDITIONS[condition]()
         self.lock: lock.Lock | lock.Held | None = None
         self.text, self.stamp, self.document = "", None, {}
 
@@ -81,18 +82,35 @@ class Editor:
         journal.drop(self.path)
         return "saved"
 
+    def lost(self) -> str:
+        assert isinstance(self.lock, lock.Lock)
+        by = self.lock.lost()
+        return "nobody" if by is None else str(by.pid)
+
+    def take_over(self) -> str:
+        self.lock = lock.take_over(self.path)
+        assert self.lock.held and self.lock.before is not None
+        return f"after {self.lock.before.pid}"
+
     def close(self) -> str:
         if isinstance(self.lock, lock.Lock):
             self.lock.release()
         return "closed"
 
 
-def serve(pipe: Connection, path: str, conditions: tuple[str, ...]) -> None:
-    """Do what the pipe says, a method of `Editor` at a time."""
-    editor = Editor(path, conditions)
+def serve(pipe: Connection, conditions: tuple[str, ...]) -> None:
+    """Do what the pipe says: begin on another file, or a method of `Editor`."""
+    for condition in conditions:
+        CONDITIONS[condition]()
+    editor = Editor("")
     while True:
-        call, *arguments = pipe.recv()
-        pipe.send(getattr(editor, call)(*arguments))
+        try:
+            call, *arguments = pipe.recv()
+        except EOFError:
+            return
+        if call == "begin":
+            editor = Editor(*arguments)
+        pipe.send("begun" if call == "begin" else getattr(editor, call)(*arguments))
 
 
 def work_on(pipe: Connection, path: str, seed: int) -> None:
@@ -107,10 +125,7 @@ def work_on(pipe: Connection, path: str, seed: int) -> None:
     number = count(editor.document)
     pipe.send(("found", number))
     if left is not None:
-        journal.write(path, editor.document, editor.stamp)
-        journal.drop(path)
-        journal.write(path, editor.document, editor.stamp)
-        journal.drop("", left)
+        journal.write(path, editor.document, editor.stamp, left)
     while True:
         number += 1
         pipe.send(("begun", number))
@@ -123,26 +138,54 @@ def work_on(pipe: Connection, path: str, seed: int) -> None:
 
 def add_up(path: str, times: int, conditions: tuple[str, ...]) -> None:
     """Add one to the number in the file, so many times, as everybody must who is told that it changed meanwhile."""
-    editor = Editor(path, conditions)
-    for _ in range(times):
+    for condition in conditions:
+        CONDITIONS[condition]()
+    editor = Editor(path)
+    for turn in range(times):
         while True:
             editor.read()
+            mine = {**editor.document, "name": f"{os.getpid()} {turn}"}  # no two write the same text
+            editor.text, editor.document = revised(editor.text, editor.document, mine).text, mine
             if editor.save(count(editor.document) + 1) == "saved":
                 break
 
 
+@contextmanager
+def _seen_by_new_processes() -> Iterator[None]:
+    """Our import path, and no main module: a new process would begin by importing the whole of pytest."""
+    main, search = sys.modules["__main__"], os.environ.get("PYTHONPATH")
+    sys.modules["__main__"] = ModuleType("__main__")
+    os.environ["PYTHONPATH"] = os.pathsep.join(sys.path)
+    try:
+        yield
+    finally:
+        sys.modules["__main__"] = main
+        os.environ.pop("PYTHONPATH")
+        if search is not None:
+            os.environ["PYTHONPATH"] = search
+
+
 def process(target: Callable[..., None], *arguments: Any) -> multiprocessing.process.BaseProcess:
-    started = PLACES.Process(target=target, args=arguments, daemon=True)
-    started.start()
+    """A process that does `target`, in our environment."""
+    state = os.environ["XDG_STATE_HOME"]  # a test sets it; the server that forks has an older environment
+    with _seen_by_new_processes():
+        started = PLACES.Process(target=_in_state, args=(state, target, *arguments), daemon=True)
+        started.start()
     return started
 
 
-class Desk:
-    """An `Editor` in a process of its own, called from here."""
+def _in_state(state: str, target: Callable[..., None], *arguments: Any) -> None:
+    os.environ["XDG_STATE_HOME"] = state
+    target(*arguments)
 
-    def __init__(self, path: str, conditions: tuple[str, ...] = ()) -> None:
+
+class Desk:
+    """An `Editor` in a process of its own, called from here; `conditions` make its world worse."""
+
+    def __init__(self, conditions: tuple[str, ...] = ()) -> None:
+        self.conditions = conditions
         self.pipe, there = PLACES.Pipe()
-        self.process = process(serve, there, path, conditions)
+        self.process = process(serve, there, conditions)
         there.close()
 
     def __call__(self, call: str, *arguments: Any) -> str:
@@ -157,18 +200,18 @@ class Desk:
 
 def _other_host() -> None:
     """Another machine, whose clock is an hour ahead, also where it writes the time of a file."""
-    mine, now, fstat = holder.me, time.time, os.fstat
+    mine, now = holder.me, time.time
     holder.me = lambda: mine().replace(host="lighthouse", machine="another", boot="another")
     time.time = lambda: now() + 3600
     replace = os.replace
 
     def replace_an_hour_ahead(source: str, target: str) -> None:
         replace(source, target)
-        about = os.stat(target)
-        os.utime(target, ns=(about.st_atime_ns, about.st_mtime_ns + 3600 * 10**9))
+        if str(target).endswith(".toml"):
+            about = os.stat(target)
+            os.utime(target, ns=(about.st_atime_ns, about.st_mtime_ns + 3600 * 10**9))
 
     os.replace = replace_an_hour_ahead  # type: ignore[assignment]
-    os.fstat = fstat
 
 
 def _no_links() -> None:
