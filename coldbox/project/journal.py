@@ -100,14 +100,12 @@ def find(path: str | os.PathLike[str]) -> Journal | None:
     found = _left(path)
     if not found:
         return None
-    try:
-        text = read(path)[0]
-        saved = tomllib.loads(text)
-    except (ColdboxError, ValueError, RecursionError):
-        saved = {}
+    saved = None
+    with suppress(ColdboxError, ValueError, RecursionError):
+        saved = tomllib.loads(read(path)[0])
     unsaved = []
     for journal in found:
-        if not same(journal.document, saved):
+        if saved is None or not same(journal.document, saved):
             unsaved.append(journal)
         elif holders.gone(journal.holder):  # killed between the save and its end
             drop(path, journal)
