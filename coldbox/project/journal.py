@@ -81,13 +81,14 @@ def write(
         os.makedirs(_folder(), mode=0o700, exist_ok=True)
         whole.replace(name, _sealed(data), lambda: None, previous=False, mode=0o600)
         whole.flush_folder(_folder())
-        if instead_of is not None:
-            os.unlink(instead_of.file)
     except UnicodeEncodeError:
         raise FileTrouble(os.fspath(path), "the text holds half a character, which UTF-8 cannot carry.") from None
     except OSError as error:
         reason = (error.strerror or "it cannot be written").lower()
         raise FileTrouble(name, f"unsaved work cannot be kept there: {reason}.") from None
+    if instead_of is not None:
+        with suppress(OSError):
+            os.unlink(instead_of.file)
 
 
 def find(path: str | os.PathLike[str]) -> Journal | None:
@@ -134,14 +135,14 @@ def _left(path: str | os.PathLike[str]) -> list[Journal]:
     entries = [name for name in entries if name.startswith(_of(target)) and name.endswith(_ENDING)]
     journals = [journal for name in entries if (journal := _read(os.path.join(_folder(), name))) is not None]
     gone_on_with = {journal.instead_of for journal in journals}
-    return [
-        journal
-        for journal in journals
-        if journal.path == target
-        and os.path.basename(journal.file) not in gone_on_with
-        and journal.holder.session() != ours
-        and holders.gone(journal.holder) is not False
-    ]
+    found = []
+    for journal in journals:
+        if os.path.basename(journal.file) in gone_on_with:  # killed before it was taken away
+            with suppress(OSError):
+                os.unlink(journal.file)
+        elif journal.path == target and journal.holder.session() != ours and holders.gone(journal.holder) is not False:
+            found.append(journal)
+    return found
 
 
 def _tidy(entries: list[str]) -> None:

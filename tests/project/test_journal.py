@@ -80,8 +80,13 @@ def test_work_that_another_went_on_with_is_not_offered_again(tmp_path: Path, mon
         other.setattr(os, "unlink", lambda *_: None)
         left(monkeypatch, file, {"number": 2}, "2", instead_of=first)
     os.utime(first.file)
-    found = journal.find(file)
-    assert found is not None and found.document == {"number": 2}
+    second = journal.find(file)
+    assert second is not None and second.document == {"number": 2}
+    left(monkeypatch, file, {"number": 3}, "3", instead_of=second)
+    third = journal.find(file)
+    assert third is not None and third.document == {"number": 3}
+    journal.drop(file, third)
+    assert journal.find(file) is None, "no older one comes up again"
 
 
 def test_what_the_file_says_already_is_not_offered(
