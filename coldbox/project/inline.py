@@ -93,7 +93,7 @@ def _sequence(layout: Layout, path: Key, keys: list[Key], plan: _Plan) -> str:
             next_old = old + 1
             if number == 0 and "\n" not in lead:
                 lead = chunks[0].lead if "\n" not in chunks[0].lead else lead
-            elif number and not lead:
+            elif number and old == 0 and not lead:
                 lead = " "
         if (behind or kept) and not lead.lstrip(" \t\r").startswith("\n"):
             lead = "\n" + (lead if "\n" not in lead else lead.lstrip(" "))

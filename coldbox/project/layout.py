@@ -104,7 +104,7 @@ class Layout:
         lead = self.line_start(begin)
         while lead > floor:
             above = self.line_start(lead - 1)
-            if above < floor or not self.text[above:lead].lstrip().startswith("#"):
+            if not self.text[above:lead].lstrip().startswith("#"):
                 break
             lead = above
         return lead

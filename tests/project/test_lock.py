@@ -67,6 +67,16 @@ def test_a_session_that_ended_is_recognised(tmp_path: Path) -> None:
     assert os.listdir(tmp_path) == [".a.toml.lock"]
 
 
+def test_of_two_who_clear_away_the_same_lock_the_quicker_one_keeps_its_own(tmp_path: Path) -> None:
+    """The slower one has looked at the lock of the ended session, and comes when the quicker one's stands there."""
+    file = tmp_path / "a.toml"
+    ended = left_by(file, started="1", token="before")
+    quicker = taken(file)
+    lock._put_aside(str(tmp_path / ".a.toml.lock"), ended)
+    assert holders.read(str(tmp_path / ".a.toml.lock")) == quicker.ours
+    assert os.listdir(tmp_path) == [".a.toml.lock"]
+
+
 def test_a_number_used_again_is_another_process(tmp_path: Path) -> None:
     left_by(tmp_path / "a.toml", started="1", token="before")
     assert taken(tmp_path / "a.toml").before is not None

@@ -317,6 +317,8 @@ def test_a_thing_put_elsewhere_takes_its_comments_along() -> None:
     after["doors"].reverse()
     text = hand(after)
     assert text.index("# seldom used") < text.index('# the big one\n[[doors]]\nname = "main"\n')
+    after["doors"].append(after["doors"][1])
+    assert hand(after).count("# the big one") == 1
 
 
 def test_items_in_a_list_of_lines() -> None:
@@ -326,8 +328,43 @@ def test_items_in_a_list_of_lines() -> None:
     assert hand(after) == HAND.replace('"pack in" },\n', '"pack in" },\n  { at = "22:00", what = "power on" },\n')
     del events[0]
     assert "somebody" not in hand(after) and "  # and then\n" in hand(after)
+    after = tomllib.loads(HAND)
+    events = after["outage"]["events"]
+    del events[1]
+    assert hand(after) == HAND.replace('  { at = "20:00", what = "pack in" },\n', "")
+    events.append({"at": "22:00"})
+    events.append({"at": "23:00"})
+    text = hand(after)
+    del events[1]
+    assert revised(text, tomllib.loads(text), after).text.count("# and then\n") == 1
     events[:] = []
     assert "events = []" in hand(after)
+
+
+def test_items_in_one_line_keep_their_spacing() -> None:
+    text = "a = [1,2, 3]  # few\nb = { c = 1, d = [2] }\n"
+    for now, said in [
+        ({"a": [2, 3]}, "a = [2, 3]"),
+        ({"a": [1, 2]}, "a = [1,2]"),
+        ({"a": [1, 3]}, "a = [1, 3]"),
+        ({"a": [0, 1, 2, 3]}, "a = [0, 1,2, 3]"),
+        ({"a": [1, 2, 3, 4]}, "a = [1,2, 3, 4]"),
+        ({"b": {"d": [2]}}, "b = { d = [2] }"),
+        ({"b": {"c": 1}}, "b = { c = 1 }"),
+        ({"b": {"c": 1, "d": [2, 5], "e": "x"}}, 'b = { c = 1, d = [2, 5], e = "x" }'),
+    ]:
+        before = tomllib.loads(text)
+        done = revised(text, before, {**before, **now})
+        assert said in done.text and done.kept_comments, done.text
+
+
+def test_comments_between_items_outlive_their_neighbours() -> None:
+    text = "a = [\n  1,\n  # on two\n  2,  # two\n  # on three\n  3\n  # the end\n]\n"
+    for now in ([1, 3], [1], [3], [1, 2], [1, 2, 3, 4], [9, 1, 2, 3]):
+        done = revised(text, {"a": [1, 2, 3]}, {"a": now})
+        assert done.kept_comments
+        for comment in ("# on two", "# on three", "# the end"):
+            assert done.text.count(comment) == 1, done.text
 
 
 def test_new_tables_stand_where_the_key_list_has_them_in_the_manner_of_the_file() -> None:
