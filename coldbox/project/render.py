@@ -9,8 +9,6 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from typing import Any
 
-import tomli_w
-
 from coldbox.project.fields import BY_KEY, TABLES, TOP_TABLES
 from coldbox.project.linemap import Key
 
@@ -29,12 +27,18 @@ def literal(value: Any) -> str:
         if len(flat) <= _WIDE or not all(isinstance(item, dict) for item in value):
             return flat
         return "[\n" + "".join(f"{_INDENT}{item},\n" for item in items) + "]"
-    return tomli_w.dumps({"x": value})[len("x = ") : -1]
+    return _dumped({"x": value})[len("x = ") : -1]
 
 
 def word(key: str) -> str:
     """One part of a key, in quotes where it needs them."""
-    return tomli_w.dumps({key: 1})[: -len(" = 1\n")]
+    return _dumped({key: 1})[: -len(" = 1\n")]
+
+
+def _dumped(pair: Mapping[str, Any]) -> str:
+    import tomli_w  # only who writes pays for it
+
+    return tomli_w.dumps(pair)
 
 
 def header(path: Key) -> str:
