@@ -9,17 +9,19 @@ from __future__ import annotations
 import builtins
 import errno
 import os
-import stat
-from collections.abc import Mapping
+import stat as stat_of
+from collections.abc import Callable, Mapping
 from typing import TYPE_CHECKING
 
 from coldbox.errors import BadProject, FileTrouble, Problem
+from coldbox.project import whole
+from coldbox.record import Record
 
 if TYPE_CHECKING:
     from coldbox.project.model import Project
 
 LIMIT_BYTES = 1_000_000  # the largest example is under 10 kB: more is no project file
-PREVIOUS = ".previous"
+PREVIOUS = whole.PREVIOUS
 _MARK = b"\xef\xbb\xbf"  # byte-order mark
 
 _REASONS = {
@@ -54,10 +56,15 @@ def _absent(file: str) -> FileTrouble:
 
 
 def read_text(path: str | os.PathLike[str]) -> str:
-    """The text of a project file.
+    """The text of a project file, as `read` gives it."""
+    return read(path)[0]
+
+
+def read(path: str | os.PathLike[str]) -> tuple[str, Stamp]:
+    """The text of a project file, and which version it is.
 
     path    name of the file
-    result  its text, a byte-order mark taken off, line ends as they are
+    result  its text, a byte-order mark taken off, line ends as they are; the stamp of the very bytes it was read from
     valid   a regular file of at most `LIMIT_BYTES` bytes, in UTF-8; the size is looked at before anything is read
     raises  FileTrouble (absent, a folder, not readable); BadProject (too large, not UTF-8)
     """
@@ -66,14 +73,15 @@ def read_text(path: str | os.PathLike[str]) -> str:
         raise FileTrouble(repr(file), "is no name of a file.")
     try:
         about = os.stat(file)
-        if stat.S_ISDIR(about.st_mode):
+        if stat_of.S_ISDIR(about.st_mode):
             raise FileTrouble(file, "is a folder. Write the name of a project file in it, such as box.toml.")
-        if not stat.S_ISREG(about.st_mode):
+        if not stat_of.S_ISREG(about.st_mode):
             raise FileTrouble(file, "is a device or a pipe. Write the name of a project file.")
         if about.st_size > LIMIT_BYTES:
             raise _too_large(file, about.st_size)
         with builtins.open(file, "rb") as handle:
             data = handle.read(LIMIT_BYTES + 1)  # it may have grown since
+            about = os.fstat(handle.fileno())
     except FileNotFoundError:
         raise _absent(file) from None
     except OSError as error:
@@ -81,7 +89,7 @@ def read_text(path: str | os.PathLike[str]) -> str:
     if len(data) > LIMIT_BYTES:
         raise _too_large(file, len(data))
     try:
-        return data.removeprefix(_MARK).decode("utf-8")
+        return data.removeprefix(_MARK).decode("utf-8"), _stamp(about, data)
     except UnicodeDecodeError as error:
         line = data.count(b"\n", 0, error.start) + 1
         said = f"Byte 0x{data[error.start]:02x} is not UTF-8 text. Save the file as UTF-8."
@@ -93,105 +101,160 @@ def _too_large(file: str, size: int) -> BadProject:
     return BadProject([Problem(said, file=file)])
 
 
+class Stamp(Record):
+    """Which version of a file it was: `sha256` of its bytes decides; the rest tells quickly that nothing moved."""
+
+    mtime_ns: int
+    size: int
+    inode: int
+    sha256: str
+
+
+class ChangedUnderneath(FileTrouble):
+    """The file is not the one that was opened; `found` is what is there now, None when nothing is.
+
+    Whoever asked has three ways on. Mine: `save(path, text, error.found)`, which keeps theirs as NAME.previous. Theirs:
+    `read(path)`. Save as: `save(other, text, None)`.
+    """
+
+    def __init__(self, file: str, found: Stamp | None, expected: Stamp | None) -> None:
+        self.found = found
+        if found is None:
+            said = "it is no longer there: somebody moved or deleted it. Save it again, or under another name."
+        elif expected is None:
+            said = "there is already a file of that name. Write another name, or say that yours shall replace it."
+        else:
+            said = "somebody changed it since you opened it. Keep yours, take theirs, or save under another name."
+        super().__init__(file, said)
+
+
+def stamp(path: str | os.PathLike[str]) -> Stamp | None:
+    """Which version of a file is there now; None when there is no such file.
+
+    path    name of the file; behind a link, the file it leads to counts
+    raises  FileTrouble (not readable, no regular file)
+    """
+    file = os.fspath(path)
+    try:
+        if not stat_of.S_ISREG(os.stat(file).st_mode):  # opening a pipe would wait
+            raise FileTrouble(file, "is not a file that can be written.")
+        with builtins.open(file, "rb") as handle:
+            data = handle.read(LIMIT_BYTES + 1)
+            return _stamp(os.fstat(handle.fileno()), data)
+    except FileNotFoundError:
+        return None
+    except OSError as error:
+        raise _trouble(file, "read", error) from None
+
+
+def _stamp(about: os.stat_result, data: bytes) -> Stamp:
+    from hashlib import sha256
+
+    return Stamp(mtime_ns=about.st_mtime_ns, size=about.st_size, inode=about.st_ino, sha256=sha256(data).hexdigest())
+
+
+def _other(now: Stamp | None, known: Stamp | None) -> bool:
+    """Whether the content differs. Times alone say nothing: a copy, a touch, another host's clock."""
+    if now is None or known is None:
+        return now is not known
+    return (now.size, now.sha256) != (known.size, known.sha256)
+
+
+def moved_on(path: str | os.PathLike[str], known: Stamp | None) -> bool:
+    """Whether a file is another than the one known: cheap enough to ask every second.
+
+    path    name of the file
+    known   its stamp when it was read; None when there was none
+    raises  FileTrouble
+    """
+    try:
+        about = os.stat(path)
+    except OSError:
+        return _other(stamp(path), known)
+    if known is not None and (about.st_mtime_ns, about.st_size, about.st_ino) == (
+        known.mtime_ns,
+        known.size,
+        known.inode,
+    ):
+        return False
+    return _other(stamp(path), known)
+
+
+def save(path: str | os.PathLike[str], text: str, expected: Stamp | None) -> Stamp:
+    """Save a project whole or not at all, and never over somebody else's work.
+
+    path      name of the file; behind a link, the file it leads to is written
+    text      what it shall hold, written as UTF-8
+    expected  the stamp of the version that `text` was made from; None for a file that is not there yet
+    result    the stamp of the new version
+    raises    ChangedUnderneath when another version is there, unless it is this very text; FileTrouble. The file is
+              then as it was, unless the sentence says that it is saved
+
+    What was there stays beside it as NAME.previous. A kill at any moment leaves the old file or the new one.
+    """
+    file = os.fspath(path)
+    data = _encoded(file, text)
+
+    def check() -> None:
+        found = stamp(file)
+        if _other(found, expected):
+            raise ChangedUnderneath(file, found, expected)
+
+    return _write(file, data, check)
+
+
 def write_text(path: str | os.PathLike[str], text: str) -> None:
-    """Write a project file whole or not at all.
+    """Write a file whole or not at all, whatever is there.
 
     path    name of the file; behind a link, the file it leads to is written
     text    what it shall hold, written as UTF-8
-    raises  FileTrouble; the file is then as it was
+    raises  FileTrouble; the file is then as it was, unless the sentence says that it is saved
 
     The new text is flushed to disk under another name in the same folder, then takes the file's place, with its mode
     and group. What was there stays beside it as NAME.previous. A text that is already there is not written again.
     """
     file = os.fspath(path)
+    _write(file, _encoded(file, text), lambda: None)
+
+
+def _encoded(file: str, text: str) -> bytes:
     try:
         data = text.encode("utf-8")
     except UnicodeEncodeError:
         raise FileTrouble(file, "the text holds half a character, which UTF-8 cannot carry.") from None
     if len(data) > LIMIT_BYTES:
         raise FileTrouble(file, f"the text has {len(data) / 1e6:.1f} MB, more than a project file may have.")
+    return data
+
+
+def _write(file: str, data: bytes, check: Callable[[], None]) -> Stamp:
     try:
-        _replace(os.path.realpath(file, strict=False), file, data)
+        target = whole.behind(file)
+        there = _writable(file, target, data)
+        about = there or whole.replace(target, data, check)
+    except whole.Overtaken:
+        raise FileTrouble(file, "others are saving it at this moment. Try again.") from None
     except OSError as error:
         raise _trouble(file, "write", error) from None
+    try:
+        whole.flush_folder(os.path.dirname(target))
+    except OSError as error:
+        reason = (error.strerror or "no reason given").lower()
+        raise FileTrouble(file, f"is saved, but the disk did not confirm it ({reason}). Save again.") from None
+    return _stamp(about, data)
 
 
-def _replace(target: str, shown: str, data: bytes) -> None:
+def _writable(shown: str, target: str, data: bytes) -> os.stat_result | None:
+    """Refuse what cannot be written; of a file that holds this very text, size, times and inode."""
     try:
         before = os.stat(target)
     except FileNotFoundError:
-        before = None
-    if before is not None:
-        if not stat.S_ISREG(before.st_mode):
-            raise FileTrouble(shown, "is not a file that can be written.")
-        if not os.access(target, os.W_OK):
-            raise FileTrouble(shown, "is write-protected.")
-        if before.st_size == len(data) and _same(target, data):
-            return
-    folder, name = os.path.split(target)
-    mark = os.urandom(6).hex()
-    fresh, kept = os.path.join(folder, f".coldbox-{mark}.new"), os.path.join(folder, f".coldbox-{mark}.old")
-    try:
-        _write_flushed(fresh, data, before)
-        if before is not None:
-            _second_name(target, kept)
-            os.replace(kept, os.path.join(folder, name + PREVIOUS))
-        os.replace(fresh, target)
-    finally:
-        for left in (fresh, kept):
-            if os.path.lexists(left):
-                os.unlink(left)
-    _flush_folder(folder)
-
-
-def _same(target: str, data: bytes) -> bool:
-    with builtins.open(target, "rb") as handle:
-        return handle.read() == data
-
-
-def _write_flushed(name: str, data: bytes, like: os.stat_result | None) -> None:
-    """A new file with `data`, on disk when this returns; `like` gives mode and group, else the usual ones."""
-    mode = 0o666 if like is None else 0o600
-    handle = os.open(name, os.O_WRONLY | os.O_CREAT | os.O_EXCL | getattr(os, "O_NOFOLLOW", 0), mode)
-    try:
-        if like is not None:
-            _dress(handle, like)
-        view = memoryview(data)
-        while view:
-            view = view[os.write(handle, view) :]
-        os.fsync(handle)
-    finally:
-        os.close(handle)
-
-
-def _dress(handle: int, like: os.stat_result) -> None:
-    mode = stat.S_IMODE(like.st_mode)
-    try:
-        os.fchown(handle, like.st_uid if os.geteuid() == 0 else -1, like.st_gid)
-    except PermissionError:
-        # Not a member of that group: its rights must not pass to ours, which then counts as everybody else.
-        mode = (mode & ~0o070) | ((mode & 0o007) << 3)
-    os.fchmod(handle, mode)
-
-
-def _second_name(target: str, kept: str) -> None:
-    try:
-        os.link(target, kept)
-    except OSError:  # a file system without hard links: a copy
-        with builtins.open(target, "rb") as handle:
-            data = handle.read()
-        _write_flushed(kept, data, os.stat(target))
-
-
-def _flush_folder(folder: str) -> None:
-    handle = os.open(folder or ".", os.O_RDONLY)
-    try:
-        os.fsync(handle)
-    except OSError as error:
-        if error.errno not in {errno.EINVAL, errno.ENOTSUP}:  # some file systems flush no folders
-            raise
-    finally:
-        os.close(handle)
+        return None
+    if not stat_of.S_ISREG(before.st_mode):
+        raise FileTrouble(shown, "is not a file that can be written.")
+    if not os.access(target, os.W_OK):
+        raise FileTrouble(shown, "is write-protected.")
+    return whole.holds(target, data) if before.st_size == len(data) else None
 
 
 def open(path: str | os.PathLike[str], options: Mapping[str, str] = {}) -> Project:  # noqa: A001, B006  never written to
