@@ -3,6 +3,7 @@ make a tenth of a second of work last ten."""
 
 import os
 
+import pytest
 from hypothesis import settings
 
 for library in ("OPENBLAS", "OMP", "MKL"):
@@ -12,3 +13,7 @@ for library in ("OPENBLAS", "OMP", "MKL"):
 settings.register_profile("ci", derandomize=True)
 if os.environ.get("CI"):
     settings.load_profile("ci")
+
+
+def pytest_addoption(parser: pytest.Parser) -> None:
+    parser.addoption("--kills", type=int, default=200, help="how many times an editing process is killed")

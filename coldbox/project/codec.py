@@ -53,6 +53,17 @@ def read(text: str, file: str, options: Mapping[str, str] = {}) -> tuple[Raw, li
     return Raw(file=file, text=text, blocks=blocks), problems
 
 
+def of_document(document: Mapping[str, Any], file: str) -> tuple[Raw, list[Problem]]:
+    """The same of a document that is edited and has no text yet: its problems tell no lines.
+
+    document  as tomllib gives it
+    file      its name, for the problems
+    """
+    walk = _Walk(file, LineMap(""), [], "IP" if document.get("units") == "IP" else "SI")
+    blocks = walk.document(dict(document))
+    return Raw(file=file, text="", blocks=blocks), walk.problems
+
+
 class _Walk:
     """One pass over a document. A `key` is the path in the document, a `path` the one printed."""
 

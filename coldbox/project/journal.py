@@ -8,18 +8,21 @@ from __future__ import annotations
 
 import builtins
 import os
+import time
 import tomllib
 from collections.abc import Mapping
 from contextlib import suppress
 from typing import Any
 
-from coldbox.errors import FileTrouble
+from coldbox.errors import ColdboxError, FileTrouble
 from coldbox.project import holder as holders
 from coldbox.project import whole
 from coldbox.project.holder import Holder
-from coldbox.project.store import LIMIT_BYTES, Stamp
+from coldbox.project.matching import same
+from coldbox.project.store import LIMIT_BYTES, Stamp, read
 from coldbox.record import Record
 
+_HALF_MADE_S = 86400.0
 _ENDING = ".toml"
 _SUM = b"# coldbox journal, sha256 "
 
@@ -28,7 +31,8 @@ class Journal(Record):
     """Work that a session left unsaved.
 
     `path` is the file it belongs to, `document` the project as TOML data, `stamp` the version of the file that the work
-    began from (None: no file was there), `holder` the session, `when_ns` the time of its last edit by its own clock.
+    began from (None: no file was there), `holder` the session, `when_ns` the time of its last edit, `instead_of` the
+    name of the journal whose work it goes on with.
     """
 
     file: str
@@ -37,6 +41,7 @@ class Journal(Record):
     stamp: Stamp | None
     holder: Holder
     when_ns: int
+    instead_of: str = ""
 
     def fits(self, now: Stamp | None) -> bool:
         """Whether the file still has the content that the work began from; else people must choose."""
@@ -45,21 +50,28 @@ class Journal(Record):
         return (now.size, now.sha256) == (self.stamp.size, self.stamp.sha256)
 
 
-def write(path: str | os.PathLike[str], document: Mapping[str, Any], stamp: Stamp | None) -> None:
+def write(
+    path: str | os.PathLike[str],
+    document: Mapping[str, Any],
+    stamp: Stamp | None,
+    instead_of: Journal | None = None,
+) -> None:
     """Keep unsaved work, whole or not at all.
 
-    path      the file it belongs to
-    document  the project as TOML data
-    stamp     the version of the file that the work began from; None when there was none
-    raises    FileTrouble; the journal before it is then still there
+    path        the file it belongs to
+    document    the project as TOML data
+    stamp       the version of the file that the work began from; None when there was none
+    instead_of  a journal that `find` gave and whose work this session goes on with: it goes when this one is there
+    raises      FileTrouble; the journal before it is then still there
     """
     import tomli_w
 
     ours = holders.me()
-    target = os.path.realpath(path)
-    facts = {
+    target = _target(path)
+    facts: dict[str, Any] = {
         "path": target,
         "holder": dict(ours),
+        "instead_of": "" if instead_of is None else os.path.basename(instead_of.file),
         **({} if stamp is None else {"stamp": dict(stamp)}),
         "document": document,
     }
@@ -74,17 +86,31 @@ def write(path: str | os.PathLike[str], document: Mapping[str, Any], stamp: Stam
     except OSError as error:
         reason = (error.strerror or "it cannot be written").lower()
         raise FileTrouble(name, f"unsaved work cannot be kept there: {reason}.") from None
+    if instead_of is not None:
+        with suppress(OSError):
+            os.unlink(instead_of.file)
 
 
 def find(path: str | os.PathLike[str]) -> Journal | None:
     """The latest work on a file that a session left unsaved when it ended; None when there is none.
 
     path    the file
-    result  of sessions on hosts that cannot be asked, too; never of a session that is known to go on. Damaged journals
-            count as none
+    result  of sessions on hosts that cannot be asked, too; never of a session that is known to go on, and never what
+            the file says already. Damaged journals count as none
     """
     found = _left(path)
-    return max(found, key=lambda journal: journal.when_ns, default=None)
+    if not found:
+        return None
+    saved = None
+    with suppress(ColdboxError, ValueError, RecursionError):
+        saved = tomllib.loads(read(path)[0])
+    unsaved = []
+    for journal in found:
+        if saved is None or not same(journal.document, saved):
+            unsaved.append(journal)
+        elif holders.gone(journal.holder):  # killed between the save and its end
+            drop(path, journal)
+    return max(unsaved, key=lambda journal: journal.when_ns, default=None)
 
 
 def drop(path: str | os.PathLike[str], offered: Journal | None = None) -> None:
@@ -93,24 +119,39 @@ def drop(path: str | os.PathLike[str], offered: Journal | None = None) -> None:
     path     the file
     offered  a journal that `find` gave and that is taken over or declined, forgotten too
     """
-    name = os.path.join(_folder(), f"{_of(os.path.realpath(path))}-{holders.me().session()}{_ENDING}")
+    name = os.path.join(_folder(), f"{_of(_target(path))}-{holders.me().session()}{_ENDING}")
     for left in (name, *(() if offered is None else (offered.file,))):
         with suppress(OSError):
             os.unlink(left)
 
 
 def _left(path: str | os.PathLike[str]) -> list[Journal]:
-    target, ours = os.path.realpath(path), holders.me().session()
+    target, ours = _target(path), holders.me().session()
     try:
-        entries = [name for name in os.listdir(_folder()) if name.startswith(_of(target)) and name.endswith(_ENDING)]
+        entries = os.listdir(_folder())
     except OSError:
         return []
+    _tidy(entries)
+    entries = [name for name in entries if name.startswith(_of(target)) and name.endswith(_ENDING)]
     journals = [journal for name in entries if (journal := _read(os.path.join(_folder(), name))) is not None]
-    return [
-        journal
-        for journal in journals
-        if journal.path == target and journal.holder.session() != ours and holders.gone(journal.holder) is not False
-    ]
+    gone_on_with = {journal.instead_of for journal in journals}
+    found = []
+    for journal in journals:
+        if os.path.basename(journal.file) in gone_on_with:  # killed before it was taken away
+            with suppress(OSError):
+                os.unlink(journal.file)
+        elif journal.path == target and journal.holder.session() != ours and holders.gone(journal.holder) is not False:
+            found.append(journal)
+    return found
+
+
+def _tidy(entries: list[str]) -> None:
+    """Take away what sessions killed in the middle of writing left half made."""
+    for entry in entries:
+        name = os.path.join(_folder(), entry)
+        with suppress(OSError):
+            if entry.startswith(".") and os.stat(name).st_mtime < time.time() - _HALF_MADE_S:
+                os.unlink(name)
 
 
 def _read(name: str) -> Journal | None:
@@ -132,6 +173,7 @@ def _read(name: str) -> Journal | None:
             stamp=None if stamp is None else Stamp(**stamp),
             holder=holder,
             when_ns=when_ns,
+            instead_of=str(facts.get("instead_of", "")),
         )
     except (OSError, ValueError, KeyError, TypeError, RecursionError):
         return None
@@ -142,6 +184,13 @@ def _sealed(data: bytes) -> bytes:
     from hashlib import sha256
 
     return _SUM + sha256(data).hexdigest().encode() + b"\n" + data
+
+
+def _target(path: str | os.PathLike[str]) -> str:
+    try:
+        return whole.behind(os.fspath(path))
+    except OSError:  # its folder went away: the work is kept all the same
+        return os.path.abspath(path)
 
 
 def _folder() -> str:

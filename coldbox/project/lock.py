@@ -10,6 +10,7 @@ import os
 from contextlib import suppress
 
 from coldbox.project import holder as holders
+from coldbox.project import whole
 from coldbox.project.holder import Holder
 from coldbox.record import Record
 
@@ -87,7 +88,11 @@ def take(path: str | os.PathLike[str]) -> Lock | Held:
     result  our lock; or who holds the file. A lock whose session has surely ended is taken over without asking, and
             `before` names it. Where no lock can be written, one that is not `held` and says why
     """
-    target, ours = os.path.realpath(path), holders.me()
+    ours = holders.me()
+    try:
+        target = whole.behind(os.fspath(path))
+    except OSError as error:
+        return Lock(os.fspath(path), ours, held=False, why=_reason(error))
     side = _side(target)
     _tidy(target)
     before = None
@@ -113,7 +118,11 @@ def take_over(path: str | os.PathLike[str]) -> Lock:
     path    name of the file
     result  our lock, `before` the one taken over; not `held` where none can be written
     """
-    target, ours = os.path.realpath(path), holders.me()
+    ours = holders.me()
+    try:
+        target = whole.behind(os.fspath(path))
+    except OSError as error:
+        return Lock(os.fspath(path), ours, held=False, why=_reason(error))
     side = _side(target)
     there = _read(side)
     if there is not None and holders.gone(there) is not True:
@@ -211,7 +220,7 @@ def _quiet(side: str) -> float:
 
 
 def _server_time(side: str) -> float:
-    """The clock of the file server, s: that of a new file. Other hosts' clocks may be hours off; this one judges all."""
+    """The time of a new file, s: one clock, the file server's, judges all hosts, whose own may be hours off."""
     probe = f"{side}-{os.urandom(6).hex()}"
     _make(probe, b"")
     try:

@@ -229,7 +229,7 @@ def _encoded(file: str, text: str) -> bytes:
 
 def _write(file: str, data: bytes, check: Callable[[], None]) -> Stamp:
     try:
-        target = os.path.realpath(file, strict=False)
+        target = whole.behind(file)
         there = _writable(file, target, data)
         about = there or whole.replace(target, data, check)
     except whole.Overtaken:
@@ -254,11 +254,7 @@ def _writable(shown: str, target: str, data: bytes) -> os.stat_result | None:
         raise FileTrouble(shown, "is not a file that can be written.")
     if not os.access(target, os.W_OK):
         raise FileTrouble(shown, "is write-protected.")
-    if before.st_size == len(data):
-        with builtins.open(target, "rb") as handle:
-            if handle.read() == data:
-                return os.fstat(handle.fileno())
-    return None
+    return whole.holds(target, data) if before.st_size == len(data) else None
 
 
 def open(path: str | os.PathLike[str], options: Mapping[str, str] = {}) -> Project:  # noqa: A001, B006  never written to

@@ -1,10 +1,10 @@
 """Files replaced whole or not at all, also when several processes on several hosts replace one at once.
 
-Two savers never overwrite each other unseen, and it takes neither locks nor clocks. Each writes its new text under a
-name of its own beside the file, then removes every other such name, then looks whether the file is still the expected
-one, then renames. Of two that do this at once, the one that removed last either took the other's new text away, whose
-rename then fails and who begins again, or came after its rename, and sees it when it looks. What a killed process left
-behind goes the same way.
+Two savers never overwrite each other unseen, and it takes neither locks nor clocks. Each flushes its new text to disk
+as a draft beside the file, renames it to a bid, removes every other bid, looks whether the file is still the expected
+one, and renames its bid to the file. Of two that do this at once, the one that removed last either took the other's bid
+away, whose rename then fails and who begins again, or came after its rename, and sees it when it looks. What a killed
+process left behind goes the same way.
 """
 
 from __future__ import annotations
@@ -18,12 +18,36 @@ from collections.abc import Callable
 from contextlib import suppress
 
 PREVIOUS = ".previous"
+_DRAFT = ".draft"
 _TRIES = 40  # each waits longer than the one before, 5 s in all
+_FORGOTTEN_NS = 3600 * 10**9  # a draft that old is nobody's any more, by the clock of the file server
 _ACL = "system.posix_acl_access"
 
 
 class Overtaken(OSError):
     """Others replaced the same file at the same moment, time and again."""
+
+
+def behind(path: str) -> str:
+    """The file that a name means: behind every link, also one that leads to a file that is not there yet.
+
+    path    any name
+    result  a name without links
+    raises  OSError; `os.path.realpath` would take a link that cannot be read for a file, and a save would replace it
+    """
+    try:
+        return os.path.realpath(path, strict=True)
+    except FileNotFoundError:
+        folder, name = os.path.split(path)
+        try:
+            leads = os.readlink(path)
+        except FileNotFoundError:
+            return os.path.join(os.path.realpath(folder or ".", strict=True), name)
+        except OSError as error:
+            if error.errno != errno.EINVAL:  # it is no link: it came to be this moment
+                raise
+            return os.path.realpath(path, strict=True)
+        return behind(os.path.join(folder, leads))
 
 
 def replace(
@@ -47,6 +71,9 @@ def replace(
         except (FileNotFoundError, FileExistsError):
             if not os.path.isdir(os.path.dirname(target) or "."):
                 raise
+        about = holds(target, data)
+        if about is not None:  # it was done: a server's answer may get lost, and its second one says "no such file"
+            return about
         time.sleep(0.006 * attempt * os.urandom(1)[0] / 255)
     raise Overtaken(errno.EBUSY, "others are saving it")
 
@@ -56,25 +83,41 @@ def _attempt(target: str, data: bytes, check: Callable[[], None], previous: bool
     folder, name = os.path.split(target)
     ours = _family(name)
     mark = ours + os.urandom(6).hex()
-    fresh, kept = os.path.join(folder, mark + ".new"), os.path.join(folder, mark + ".old")
+    draft, bid, kept = (os.path.join(folder, mark + ending) for ending in (_DRAFT, ".new", ".old"))
     try:
-        about = _write_flushed(fresh, data, target, before, mode)
-        _remove_others(folder, ours, mark)
+        about = _write_flushed(draft, data, target, before, mode)
+        os.replace(draft, bid)
+        _remove_others(folder, ours, mark, about.st_mtime_ns - _FORGOTTEN_NS)
         check()
         if before is None:
-            _take_free_place(fresh, target)
+            _take_free_place(bid, target)
             return about
         if previous:
             _second_name(target, kept)
             os.replace(kept, target + PREVIOUS)
         if _moved(before, _present(target)):  # an editor, between the check and here
             raise FileExistsError(errno.EEXIST, "changed meanwhile")
-        os.replace(fresh, target)
+        os.replace(bid, target)
         return about
     finally:
-        for left in (fresh, kept):
+        for left in (draft, bid, kept):
             with suppress(OSError):
                 os.unlink(left)
+
+
+def holds(target: str, data: bytes) -> os.stat_result | None:
+    """Size, times and inode of a file that holds exactly `data`; None of another, or none.
+
+    target  the file
+    data    what it may hold
+    raises  OSError
+    """
+    try:
+        with builtins.open(target, "rb") as handle:
+            about = os.fstat(handle.fileno())
+            return about if about.st_size == len(data) and handle.read(len(data) + 1) == data else None
+    except FileNotFoundError:
+        return None
 
 
 def _family(name: str) -> str:
@@ -84,11 +127,13 @@ def _family(name: str) -> str:
     return f".coldbox-{sha256(os.fsencode(name)).hexdigest()[:12]}-"
 
 
-def _remove_others(folder: str, ours: str, mark: str) -> None:
+def _remove_others(folder: str, ours: str, mark: str, drafts_before_ns: int) -> None:
     for entry in os.listdir(folder or "."):
         if entry.startswith(ours) and not entry.startswith(mark):
+            name = os.path.join(folder, entry)
             with suppress(FileNotFoundError, PermissionError):
-                os.unlink(os.path.join(folder, entry))
+                if not entry.endswith(_DRAFT) or os.stat(name).st_mtime_ns < drafts_before_ns:
+                    os.unlink(name)
 
 
 def _present(target: str) -> os.stat_result | None:
@@ -106,16 +151,16 @@ def _moved(before: os.stat_result, now: os.stat_result | None) -> bool:
     )
 
 
-def _take_free_place(fresh: str, target: str) -> None:
+def _take_free_place(bid: str, target: str) -> None:
     """Give a new file its name, unless the name was taken meanwhile."""
     try:
-        os.link(fresh, target)
+        os.link(bid, target)
     except (FileExistsError, FileNotFoundError):
         raise
     except OSError:  # a file system without hard links
         if os.path.lexists(target):
             raise FileExistsError(errno.EEXIST, "made meanwhile") from None
-        os.replace(fresh, target)
+        os.replace(bid, target)
 
 
 def _write_flushed(

@@ -1,1 +1,1 @@
-"""The screens. Everything but `app`, `looks`, `terminal` and `widgets` works without the toolkit that paints them."""
+"""The screens. Only `app`, `widgets` and `terminal` know the toolkit; the desk and what it shows can do without."""

@@ -183,3 +183,115 @@ def test_a_file_opens_as_a_complete_project(tmp_path: Path) -> None:
     assert project.name == "least"
     assert project.box.temperature == -20
     assert project.origins["box.temperature"].kind == "option"
+
+
+def test_a_stamp_tells_versions_apart_by_content_and_not_by_time(tmp_path: Path) -> None:
+    file = tmp_path / "a.toml"
+    assert store.stamp(file) is None
+    file.write_text("one\n")
+    text, first = store.read(file)
+    assert text == "one\n" and store.stamp(file) == first
+    assert not store.moved_on(file, first)
+    os.utime(file, (0, 0))
+    assert not store.moved_on(file, first), "touched only"
+    store.save(file, "two\n", first)
+    about = file.stat()
+    assert store.moved_on(file, first)
+    second = store.stamp(file)
+    file.write_text("six\n")  # as long, in place, and its time put back
+    os.utime(file, ns=(about.st_atime_ns, about.st_mtime_ns))
+    with pytest.raises(store.ChangedUnderneath):
+        store.save(file, "three\n", second)
+    file.unlink()
+    assert store.moved_on(file, second)
+    assert not store.moved_on(file, None)
+
+
+def test_a_stamp_is_of_a_file_only(tmp_path: Path) -> None:
+    os.mkfifo(tmp_path / "pipe")
+    for name in ("pipe", ""):
+        with pytest.raises(FileTrouble):
+            store.stamp(tmp_path / name)
+
+
+def test_a_save_over_another_version_is_refused_and_leaves_three_ways_on(tmp_path: Path) -> None:
+    file = tmp_path / "a.toml"
+    file.write_text("one\n")
+    opened = store.stamp(file)
+    file.write_text("theirs\n")
+    with pytest.raises(store.ChangedUnderneath) as told:
+        store.save(file, "mine\n", opened)
+    assert "somebody changed it" in str(told.value)
+    assert file.read_text() == "theirs\n"
+    assert store.save(tmp_path / "b.toml", "mine\n", None) == store.stamp(tmp_path / "b.toml")  # save as
+    text, stamp = store.read(file)  # theirs
+    assert text == "theirs\n" and stamp == told.value.found
+    assert store.save(file, "mine\n", told.value.found) == store.stamp(file)  # mine
+    assert file.read_text() == "mine\n"
+    assert (tmp_path / "a.toml.previous").read_text() == "theirs\n"
+
+
+def test_a_file_that_came_or_went_is_a_change(tmp_path: Path) -> None:
+    file = tmp_path / "a.toml"
+    file.write_text("theirs\n")
+    with pytest.raises(store.ChangedUnderneath, match="already a file"):
+        store.save(file, "mine\n", None)
+    opened = store.stamp(file)
+    file.unlink()
+    with pytest.raises(store.ChangedUnderneath, match="no longer there") as told:
+        store.save(file, "mine\n", opened)
+    assert told.value.found is None
+    store.save(file, "mine\n", told.value.found)
+    assert file.read_text() == "mine\n"
+
+
+def test_the_same_text_is_no_conflict(tmp_path: Path) -> None:
+    """Both did the same: nobody's work is lost."""
+    file = tmp_path / "a.toml"
+    file.write_text("same\n")
+    assert store.save(file, "same\n", None) == store.stamp(file)
+
+
+def test_a_link_to_a_file_that_is_not_there_yet_is_kept(tmp_path: Path) -> None:
+    (tmp_path / "real").mkdir()
+    link = tmp_path / "a.toml"
+    link.symlink_to("real/b.toml")
+    store.save(link, "one\n", None)
+    assert link.is_symlink() and (tmp_path / "real" / "b.toml").read_text() == "one\n"
+
+
+def access_list() -> bytes:
+    """As the kernel packs it: owner rw, user 12345 rw, group r, mask rw, others nothing."""
+    entries = [(1, 6, 0xFFFFFFFF), (2, 6, 12345), (4, 4, 0xFFFFFFFF), (0x10, 6, 0xFFFFFFFF), (0x20, 0, 0xFFFFFFFF)]
+    return (2).to_bytes(4, "little") + b"".join(
+        tag.to_bytes(2, "little") + rights.to_bytes(2, "little") + who.to_bytes(4, "little")
+        for tag, rights, who in entries
+    )
+
+
+def test_an_access_list_is_kept(tmp_path: Path) -> None:
+    file = tmp_path / "a.toml"
+    file.write_text("one\n")
+    packed = access_list()
+    try:
+        os.setxattr(file, "system.posix_acl_access", packed)
+    except (OSError, AttributeError):
+        pytest.skip("no access lists here")
+    store.write_text(file, "two\n")
+    assert os.getxattr(file, "system.posix_acl_access") == packed
+    assert stat.S_IMODE(file.stat().st_mode) == 0o660
+
+
+def test_a_list_that_the_folder_hands_down_opens_nothing(tmp_path: Path) -> None:
+    file = tmp_path / "a.toml"
+    file.write_text("one\n")
+    file.chmod(0o640)
+    packed = access_list()
+    try:
+        os.setxattr(tmp_path, "system.posix_acl_default", packed)
+    except (OSError, AttributeError):
+        pytest.skip("no access lists here")
+    store.write_text(file, "two\n")
+    with pytest.raises(OSError):
+        os.getxattr(file, "system.posix_acl_access")
+    assert stat.S_IMODE(file.stat().st_mode) == 0o640
