@@ -130,7 +130,8 @@ def wrapped(text: str, width: int) -> list[str]:
     lines: list[str] = []
     for paragraph in text.split("\n"):
         line = ""
-        for word in paragraph.split():
+        for whole in paragraph.split():
+            word = whole
             while plain.width(word) > width > 0:
                 room = width - len(line) - 1 if line else width
                 if room < 8 and line:

@@ -15,9 +15,23 @@ from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.keymap import PAGES
 from coldbox.tui.layer import Area, Layer
 from coldbox.tui.looks import THEMES
-from coldbox.tui.settings import Settings
+from coldbox.tui.settings import Settings, load_settings
+from coldbox.tui.things import LISTS, Thing, thing, things
 
+BEGIN_NO_VALUE = ("help", "palette")  # their usual keys, ? and :, begin no value
 NEEDED = (40, 12)  # columns and lines below which only the answer is shown
+
+
+KINDS = {
+    "": "project", "faces": "face", "people": "people", "ventilation": "fresh air", "lots": "goods", "packs": "pack",
+    "site": "place and weather", "quoted": "quoted figure",
+}  # fmt: skip
+ABOUT = {
+    "doors": "an opening: leaf, curtain, traffic", "panels": "a stretch of a face that is built otherwise",
+    "lots": "a product that arrives, is stored, or both", "packs": "ice, gel or dry ice",
+    "people": "who works inside, and when", "lights": "lamps", "motors": "fans of machines, conveyors",
+    "trucks": "fork lifts, pallet trucks", "heaters": "floor, drain, pressure port", "ventilation": "on purpose",
+}  # fmt: skip
 
 
 class Shell:
@@ -51,6 +65,27 @@ class Shell:
     def top(self) -> Layer:
         """The layer that gets the keys."""
         return self.sheets[-1] if self.sheets else self.page
+
+    @classmethod
+    def start(
+        cls,
+        file: str | None,
+        folder: Path,
+        *,
+        theme: str = "",
+        ascii_drawing: bool = False,
+        ascii_letters: bool = False,
+    ) -> Shell:
+        """The screens as they begin: with a project, or with the projects of the folder. Raises FileTrouble."""
+        settings = load_settings()
+        shell = cls(folder, settings, theme=theme, ascii_drawing=ascii_drawing, ascii_letters=ascii_letters)
+        if file is None:
+            shell.go("first")
+        else:
+            shell.open(Path(file))
+        if settings.problems:
+            shell.say(settings.problems[0], "warn")
+        return shell
 
     # Moving about
 
@@ -90,12 +125,19 @@ class Shell:
             self.top.type(letter)
             return
         action = self.keymap.action(self.top.where, key)
+        if letter is not None and self.top.takes_letters and not self._bound_here(action, key):
+            self.top.type(letter)
+            return
         if action is not None and self.act(action):
             return
         if self.top.key(key) or (letter is not None and self.top.type(letter)):
             return
         if action is None and letter is not None:
             self.say(f'"{letter}" does nothing here. {self.keymap.shown("help")} says what does.')
+
+    def _bound_here(self, action: str | None, key: str) -> bool:
+        """Whether a letter is a command even where letters begin a text: bound to just this place, or help."""
+        return action in BEGIN_NO_VALUE or action != self.keymap.action("everywhere", key)
 
     def paste(self, text: str) -> None:
         """Text from the clipboard."""
@@ -130,6 +172,8 @@ class Shell:
             case "theme":
                 self.theme = THEMES[(THEMES.index(self.theme) + 1) % len(THEMES)]
                 self.say(f'Colours: {self.theme}. To keep it: theme = "{self.theme}" in {self.settings.path}')
+            case "jump":
+                self._jump()
             case "copy":
                 self._copy()
             case "write":
@@ -190,6 +234,92 @@ class Shell:
         lines = (lambda: told.about(self, below)) if which == "help" else (lambda: told.keys(self))
         self.over(Reading(self, heading, lines))
 
+    def _jump(self) -> None:
+        from coldbox.tui.sheets.jump import Jump
+
+        targets = self.top.targets()
+        if targets:
+            self.over(Jump(self, targets))
+        else:
+            self.say("There is nothing to jump to here.")
+
+    # Things of the project
+
+    def things(self) -> tuple[Thing, ...]:
+        """Everything that has fields."""
+        return () if self.desk is None else things(self.desk.document)
+
+    def described(self, path: str) -> str:
+        """A thing in words: what it is, where it is."""
+        found = None if self.desk is None else thing(self.desk.document, path)
+        if found is None:
+            return path
+        kind = KINDS.get(found.table, found.table.removesuffix("s"))
+        words = kind if found.label == kind else f"{kind} {found.label}"
+        return f"{words}, on the {found.face}" if found.face and found.table != "faces" else words
+
+    def go_to(self, path: str) -> None:
+        """Stand on a thing in the carton, and open it."""
+        from coldbox.tui.pages.carton import Page
+
+        self._turn("carton")
+        if isinstance(self.page, Page):
+            self.page.stand_on(path)
+        self.open_sheet(path)
+
+    def open_sheet(self, path: str) -> None:
+        """The sheet of a thing."""
+        from coldbox.tui.sheets.edit import EditSheet
+
+        found = None if self.desk is None else thing(self.desk.document, path)
+        if found is None:
+            self.say("There are no fields here.")
+        else:
+            self.over(EditSheet(self, found))
+
+    def add_at(self, face: str) -> None:
+        """Ask what to add, and open it. face: where the cursor is, "" for inside."""
+        from coldbox.tui.document import ADDABLE
+        from coldbox.tui.sheets.pick import Item, PickList
+
+        items = [Item(KINDS.get(table, table.removesuffix("s")), table, ABOUT.get(table, "")) for table in ADDABLE]
+        heading = f"Add, on the {face}" if face else "Add"
+        self.over(PickList(self, heading, items, lambda table: self._add(table, face)))
+
+    def _add(self, table: str, face: str) -> None:
+        if self.desk is None or self._reads_only():
+            return
+        self._then_open(self.desk.add(table, face))
+
+    def _then_open(self, path: str) -> None:
+        from coldbox.tui.pages.carton import Page
+
+        self.edited()
+        if isinstance(self.page, Page):
+            self.page.stand_on(path)
+        self.open_sheet(path)
+
+    def change_thing(self, action: str, path: str) -> None:
+        """Duplicate or remove a thing."""
+        desk = self.desk
+        if desk is None or self._reads_only():
+            return
+        if path.partition(".")[0] not in LISTS:
+            self.say(f"The {self.described(path)} stays: only what stands on the box or in it can be doubled or go.")
+        elif action == "duplicate":
+            self._then_open(desk.duplicate(path))
+        else:
+            words = self.described(path)
+            desk.remove(path)
+            self.edited()
+            self.say(f"Gone: {words}. {self.keymap.shown('undo')} brings it back.")
+
+    def _reads_only(self) -> bool:
+        if self.desk is not None and self.desk.read_only:
+            self.say(f"Open to read only. {self.desk.held_by}", "warn")
+            return True
+        return False
+
     # The project
 
     def open(self, path: Path) -> None:
@@ -198,12 +328,18 @@ class Shell:
 
         opened(self, path)
 
+    def leave_pages(self) -> None:
+        """Forget the pages of the project before; what they have running is stopped."""
+        for page in self.pages.values():
+            page.leave()
+        self.pages.clear()
+
     def show_folder(self) -> None:
         """Put the project away and show the projects of the folder."""
         if self.desk is not None:
             self.desk.close()
             self.desk = None
-        self.pages.clear()
+        self.leave_pages()
         for sheet in reversed(self.sheets[:]):
             self.close(sheet)
         self.go("first")
@@ -261,7 +397,8 @@ class Shell:
             self.say("There is nothing to copy here.")
             return
         self.clipboard = text
-        self.say(f"Sent to the clipboard of your terminal. If it does not arrive: {self.keymap.shown('write')} to file.")
+        instead = self.keymap.shown("write")
+        self.say(f"Sent to the clipboard of your terminal. If it does not arrive, {instead} writes it to a file.")
 
     def _write_to_file(self) -> None:
         from coldbox.tui.sheets.pick import Asked

@@ -77,7 +77,7 @@ def run(file: str | None, folder: Path) -> int:
     )
     from coldbox.tui.app import ColdboxApp
 
-    if found.ascii_letters and hasattr(stderr, "reconfigure"):
+    if found.ascii_letters and stderr is not None:
         stderr.reconfigure(errors="replace")  # the toolkit's own bytes are ASCII; ours are by then
     app = ColdboxApp(shell)
     app.run(mouse=False)

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import partial
+
 from coldbox.paper.drawing.carton import carton
 from coldbox.paper.load import figure
 from coldbox.tui.frame import Frame, wrapped
@@ -109,15 +111,20 @@ class Page(Layer):
             case "accept":
                 self.shell.open_sheet(self.at)
             case "add":
-                self.shell.add_at(self.at)
+                self.shell.add_at(self._face())
             case "duplicate" | "remove":
-                self.at = self.shell.change_thing(action, self.at)
+                self.shell.change_thing(action, self.at)
             case _:
                 return False
         return True
 
+    def _face(self) -> str:
+        """The face the cursor is on, or what it is on stands on; "" inside."""
+        found = next((one for one in self.shell.things() if one.path == self.at), None)
+        return "" if found is None else found.face
+
     def targets(self) -> list[Target]:
-        return [Target(x, y, lambda path=path: self.stand_on(path)) for path, (x, y, _, _) in self._places.items()]
+        return [Target(x, y, partial(self.stand_on, path)) for path, (x, y, _, _) in self._places.items()]
 
     def stand_on(self, path: str) -> None:
         """Put the cursor on a thing."""

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import partial
+
 from coldbox.tui.folder import Entry, Folder
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.layer import Area, Layer, Rows
@@ -122,8 +124,12 @@ class Page(Layer):
     def leave(self) -> None:
         self.folder.stop()
 
+    def stand_on(self, index: int) -> None:
+        """Put the cursor on a row."""
+        self.rows.at = index
+
     def targets(self) -> list[Target]:
-        return [Target(x, y, lambda index=index: setattr(self.rows, "at", index)) for x, y, index in self._places]
+        return [Target(x, y, partial(self.stand_on, index)) for x, y, index in self._places]
 
     def spoken(self) -> str:
         found = self.found()

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import partial
+
 from coldbox.account.entry import Entry, Load
 from coldbox.paper.drawing.day import day_bars
 from coldbox.paper.load import figure, source_words
@@ -46,7 +48,7 @@ class Page(Layer):
         self._places = []
         load, desk = self.load, self.shell.desk
         if load is None or desk is None:
-            frame.text(area.x + 2, area.y + 1, "No account yet: mend the entries named below first.", "text", area.width)
+            frame.text(area.x + 2, area.y + 1, "No account yet: mend what is named below first.", "text")
             return
         wide = area.width >= 110
         left = area.width * 3 // 5 if wide else area.width
@@ -118,8 +120,12 @@ class Page(Layer):
         count = len(ranked(self.load)) if self.load is not None else 0
         return self.rows.move(action, count, self.room)
 
+    def stand_on(self, index: int) -> None:
+        """Put the cursor on a row."""
+        self.rows.at = index
+
     def targets(self) -> list[Target]:
-        return [Target(x, y, lambda index=index: setattr(self.rows, "at", index)) for x, y, index in self._places]
+        return [Target(x, y, partial(self.stand_on, index)) for x, y, index in self._places]
 
     def copied(self) -> str:
         return "\n".join(text for _, text in self._told(76))

@@ -6,8 +6,8 @@ from coldbox.tui.desk import Refusal
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.layer import Area, Layer, Rows
 from coldbox.tui.sheet import Line, lines
-from coldbox.tui.shell import Shell
 from coldbox.tui.sheets.pick import Item, PickList
+from coldbox.tui.shell import Shell
 from coldbox.tui.things import Thing
 from coldbox.tui.widgets.editor import Editor
 

@@ -30,7 +30,7 @@ class Jump(Layer):
         super().__init__(shell)
         pairs = [first + second for first in LETTERS for second in LETTERS]
         names = list(LETTERS) if len(targets) <= len(LETTERS) else pairs
-        self.targets = dict(zip(names, targets, strict=False))
+        self.lettered = dict(zip(names, targets, strict=False))
         self.typed = ""
 
     @property
@@ -39,16 +39,16 @@ class Jump(Layer):
 
     def draw(self, frame: Frame, area: Area) -> None:
         del area
-        for name, target in self.targets.items():
+        for name, target in self.lettered.items():
             if name.startswith(self.typed):
                 frame.text(target.x, target.y, name, "danger")
 
     def type(self, text: str) -> bool:
         typed = self.typed + text.casefold()
-        if typed in self.targets:
+        if typed in self.lettered:
             self.shell.close(self)
-            self.targets[typed].go()
-        elif any(name.startswith(typed) for name in self.targets):
+            self.lettered[typed].go()
+        elif any(name.startswith(typed) for name in self.lettered):
             self.typed = typed
         else:
             self.shell.close(self)

@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from coldbox.tui.shell import Shell
 from coldbox.tui.sheets.pick import Item, PickList
+from coldbox.tui.shell import Shell
 
 
 def palette(shell: Shell) -> PickList:
