@@ -1,0 +1,158 @@
+"""The hold time while one edits: computed in a process of its own, which drops what it does when asked anew."""
+
+from __future__ import annotations
+
+from contextlib import suppress
+from typing import TYPE_CHECKING, Any
+
+from coldbox.errors import ColdboxError, Stopped
+
+if TYPE_CHECKING:
+    from multiprocessing.connection import Connection
+
+    from coldbox.timeline.results import Outage, Trip
+
+DRAWS = 500
+_Asked = tuple[int, str, dict[str, Any]]
+
+
+class Hold:
+    """What the process last said of the outage, and of the trip where there is one.
+
+    wanted: whether to compute at all.
+    """
+
+    def __init__(self, *, wanted: bool = True) -> None:
+        self.wanted = wanted
+        self.outage: Outage | None = None
+        self.trip: Trip | None = None
+        self.trouble = ""
+        self.stale = False
+        self._number = 0
+        self._waiting = False
+        self._process: Any = None
+        self._pipe: Connection | None = None
+
+    @property
+    def busy(self) -> bool:
+        """Whether an answer is still to come."""
+        return self._waiting
+
+    def ask(self, path: str, document: dict[str, Any]) -> None:
+        """A new state of the project: what is shown is stale until its answer has come."""
+        self._number += 1
+        self.stale = self.outage is not None
+        if not self.wanted:
+            return
+        if self._process is None or not self._process.is_alive():
+            self._start()
+        assert self._pipe is not None
+        try:
+            self._pipe.send((self._number, path, document))
+            self._waiting = True
+        except OSError:
+            self._process, self._waiting = None, False
+            self.trouble = "the hold time's process has ended"
+
+    def tick(self) -> bool:
+        """Takes in what has come; whether there was anything."""
+        news = False
+        while self._pipe is not None and self._waiting and self._pipe.poll():
+            try:
+                number, what, found = self._pipe.recv()
+            except (EOFError, OSError):
+                self._waiting, self.trouble = False, "the hold time's process has ended"
+                self._pipe = self._process = None
+                return True
+            if number != self._number:
+                continue
+            news = True
+            self._take(what, found)
+        return news
+
+    def _take(self, what: str, found: Any) -> None:
+        if what == "done":
+            self._waiting = False
+        elif what == "trouble":
+            self.outage, self.trip, self.trouble, self.stale = None, None, found, False
+        elif what == "trip":
+            self.trip = found
+        else:
+            self.outage, self.trouble, self.stale = found, "", False
+
+    def words(self) -> str:
+        """How long it holds, for one line."""
+        from coldbox.paper.sure import duration, eight_in_ten
+
+        if self.trouble:
+            return "hold time: not to be computed"
+        found = self.outage
+        if found is None:
+            return "hold time is coming" if self._waiting else "hold time not computed"
+        spread = found.spread
+        sure = f", {eight_in_ten(spread.hours, found.horizon_h)}" if spread is not None else ", spread is coming"
+        before = "was: " if self.stale else ""
+        if not found.limits:
+            return f"{before}holds: nothing has a limit"
+        if found.hold_h is None:
+            return f"{before}holds beyond {duration(found.horizon_h)}{sure}"
+        return f"{before}holds {duration(found.hold_h)}{sure}"
+
+    def _start(self) -> None:
+        import multiprocessing
+
+        context = multiprocessing.get_context("spawn")
+        self._pipe, theirs = context.Pipe()
+        self._process = context.Process(target=work, args=(theirs,), daemon=True)
+        self._process.start()
+        theirs.close()
+
+    def stop(self) -> None:
+        """Ends the process at once."""
+        if self._process is not None:
+            self._process.terminate()
+            self._process.join(timeout=2.0)
+        if self._pipe is not None:
+            self._pipe.close()
+        self._process, self._pipe, self._waiting = None, None, False
+
+
+def work(pipe: Connection) -> None:
+    """What the process does: always the newest question, first without draws, then with them."""
+    import signal
+
+    signal.signal(signal.SIGINT, signal.SIG_IGN)
+    with suppress(EOFError, OSError):
+        asked = pipe.recv()
+        while True:
+            while pipe.poll():
+                asked = pipe.recv()
+            with suppress(Stopped):
+                _answer(pipe, asked)
+            if not pipe.poll():
+                asked = pipe.recv()
+
+
+def _answer(pipe: Connection, asked: _Asked) -> None:
+    from coldbox.project import codec, shop
+    from coldbox.project.resolve import resolve
+    from coldbox.spread import hold
+
+    number, path, document = asked
+    try:
+        raw, problems = codec.of_document(document, path)
+        project = resolve(raw, problems, shop.library(path))
+
+        def go_on(share: float) -> bool:
+            del share
+            return not pipe.poll()
+
+        for count in (0, DRAWS):
+            pipe.send((number, "outage", hold.run(project, count=count, go_on=go_on)))
+            if project.trip is not None:
+                pipe.send((number, "trip", hold.run(project, "trip", count=count, go_on=go_on)))
+    except Stopped:
+        raise
+    except ColdboxError as error:
+        pipe.send((number, "trouble", str(error)))
+    pipe.send((number, "done", None))
