@@ -66,13 +66,15 @@ def _keys(given: Any, path: Path) -> tuple[dict[str, list[str]], list[str]]:
     known = {action.id for action in ACTIONS}
     found: dict[str, list[str]] = {}
     problems = []
-    for word, keys in given.items():
-        keys = [keys] if isinstance(keys, str) else keys
+    for word, value in given.items():
+        keys = [value] if isinstance(value, str) else value
         if word not in known:
             near = nearest(word, sorted(known))
             problems.append(f'{path}: "{clean(word)}" is no action.' + (f' Nearest: "{near}".' if near else ""))
-        elif not isinstance(keys, list) or not 0 < len(keys) <= MOST_KEYS or not all(
-            isinstance(key, str) and key.isprintable() and 0 < len(key) < 30 for key in keys
+        elif (
+            not isinstance(keys, list)
+            or not 0 < len(keys) <= MOST_KEYS
+            or not all(isinstance(key, str) and key.isprintable() and 0 < len(key) < 30 for key in keys)
         ):
             problems.append(f'{path}: keys.{clean(word)} is a list of keys, such as ["w", "ctrl+s"].')
         else:
