@@ -136,7 +136,10 @@ class ColdboxApp(App[int]):
         """A fault anywhere: keep the work, leave, and let the caller report it once the terminal is restored."""
         if self.fault is None:
             self.fault = error
-            self.shell.close_down(keep_work=True)
+            try:
+                self.shell.close_down(keep_work=True)
+            except Exception as second:  # the guard itself must not fall: the terminal is still to be restored
+                error.add_note(f"and while its work was kept: {second!r}")
         self._return_code = 3
         if self._exception is None:
             self._exception = error

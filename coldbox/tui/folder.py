@@ -1,12 +1,20 @@
-"""The projects of a folder with what they come to: names at once, figures one by one as somebody asks."""
+"""The projects of a folder with what they come to: names at once, figures one by one as they are ready."""
 
 from __future__ import annotations
 
 import os
+from collections.abc import Iterable
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from coldbox.errors import BadProject, ColdboxError
 from coldbox.record import Record
+from coldbox.tui.aside import Aside
+
+if TYPE_CHECKING:
+    from multiprocessing.connection import Connection
+
+    from coldbox.scene.finding import Finding
 
 
 class Entry(Record):
@@ -21,29 +29,52 @@ class Entry(Record):
 
 
 class Folder:
-    """The projects of a folder, and of `projects` in it. Listing reads no file: hundreds open at once."""
+    """The projects of a folder, and of `projects` in it. Listing reads no file: hundreds open at once.
+
+    The figures come from a process of their own: a hold time takes longer than a key may wait.
+    """
 
     def __init__(self, folder: Path) -> None:
         found = [*_projects(folder), *_projects(folder / "projects")]
         self.entries = [Entry(path=path, name=path.stem) for path in found]
-        self._next = 0
-
-    @property
-    def busy(self) -> bool:
-        """Whether figures are still to come."""
-        return self._next < len(self.entries)
+        self.busy = bool(found)  # whether figures are still to come
+        self._aside: Aside | None = None
 
     def tick(self) -> bool:
-        """Computes the next project; whether there was one. First all capacities, cheap, are told, then it is done."""
+        """Takes in the figures that have come; whether there were any. The first call starts the process."""
         if not self.busy:
             return False
-        self.entries[self._next] = _computed(self.entries[self._next])
-        self._next += 1
-        return True
+        self._aside = self._aside or Aside(work, self.entries)
+        news = False
+        try:
+            while self._aside is not None and self._aside.pipe.poll():
+                at, entry = self._aside.pipe.recv()
+                if entry is None:
+                    self.stop()
+                else:
+                    self.entries[at] = entry
+                news = True
+        except (EOFError, OSError):
+            self.stop()
+        return news
 
     def stop(self) -> None:
-        """No more figures."""
-        self._next = len(self.entries)
+        """No more figures; the process ends."""
+        self.busy = False
+        if self._aside is not None:
+            self._aside.end()
+        self._aside = None
+
+
+def work(pipe: Connection, entries: list[Entry]) -> None:
+    """What the process does: first what each project needs, which is quick, then how long each holds."""
+    for at, entry in enumerate(entries):
+        entries[at] = _computed(entry)
+        pipe.send((at, entries[at]))
+    for at, entry in enumerate(entries):
+        if not entry.broken:
+            pipe.send((at, _with_hold(entry)))
+    pipe.send((-1, None))
 
 
 def _projects(folder: Path) -> list[Path]:
@@ -58,7 +89,6 @@ def _projects(folder: Path) -> list[Path]:
 def _computed(entry: Entry) -> Entry:
     from coldbox.account.load import load
     from coldbox.project import store
-    from coldbox.spread import hold
     from coldbox.units import show
 
     try:
@@ -68,20 +98,30 @@ def _computed(entry: Entry) -> Entry:
         return entry.replace(broken=bad.problems[0].text if bad.problems else "cannot be read")
     except ColdboxError as error:
         return entry.replace(broken=str(error).strip().splitlines()[-1].strip())
-    found = [one for one in account.findings if not one.standing]
-    try:
-        kept = hold.run(project, count=0)
-        found += [one for one in kept.findings if not one.standing]
-        held = _held(kept.hold_h, kept.horizon_h, bool(kept.limits))
-    except ColdboxError:
-        held = "-"
-    worst = next((level for level in ("danger", "caution", "note") if any(one.level == level for one in found)), "")
-    count = sum(one.level == worst for one in found)
     return entry.replace(
-        capacity=show(float(account.required_capacity_w), "power", project.units, 3),
-        hold=held,
-        findings=f"{count} {worst}" if worst else "none",
+        capacity=show(float(account.required_capacity_w), "power", project.units, 3), findings=_worst(account.findings)
     )
+
+
+def _with_hold(entry: Entry) -> Entry:
+    from coldbox.account.load import load
+    from coldbox.project import store
+    from coldbox.spread import hold
+
+    try:
+        project = store.open(entry.path)
+        kept = hold.run(project, count=0)
+        found = (*load(project).findings, *kept.findings)
+    except ColdboxError:
+        return entry.replace(hold="-")
+    return entry.replace(hold=_held(kept.hold_h, kept.horizon_h, bool(kept.limits)), findings=_worst(found))
+
+
+def _worst(findings: Iterable[Finding]) -> str:
+    """How many findings of the worst level, leaving out what is told of every box."""
+    found: list[str] = [one.level for one in findings if not one.standing]
+    worst = next((level for level in ("danger", "caution", "note") if level in found), "")
+    return f"{found.count(worst)} {worst}" if worst else "none"
 
 
 def _held(hold_h: float | None, horizon_h: float, limited: bool) -> str:

@@ -6,6 +6,7 @@ from contextlib import suppress
 from typing import TYPE_CHECKING, Any
 
 from coldbox.errors import ColdboxError, Stopped
+from coldbox.tui.aside import Aside
 
 if TYPE_CHECKING:
     from multiprocessing.connection import Connection
@@ -30,8 +31,7 @@ class Hold:
         self.stale = False
         self._number = 0
         self._waiting = False
-        self._process: Any = None
-        self._pipe: Connection | None = None
+        self._aside: Aside | None = None
 
     @property
     def busy(self) -> bool:
@@ -44,25 +44,24 @@ class Hold:
         self.stale = self.outage is not None
         if not self.wanted:
             return
-        if self._process is None or not self._process.is_alive():
-            self._start()
-        assert self._pipe is not None
+        if self._aside is None or not self._aside.alive:
+            self._aside = Aside(work)
         try:
-            self._pipe.send((self._number, path, document))
+            self._aside.pipe.send((self._number, path, document))
             self._waiting = True
         except OSError:
-            self._process, self._waiting = None, False
+            self._aside, self._waiting = None, False
             self.trouble = "the hold time's process has ended"
 
     def tick(self) -> bool:
         """Takes in what has come; whether there was anything."""
         news = False
-        while self._pipe is not None and self._waiting and self._pipe.poll():
+        while self._aside is not None and self._waiting and self._aside.pipe.poll():
             try:
-                number, what, found = self._pipe.recv()
+                number, what, found = self._aside.pipe.recv()
             except (EOFError, OSError):
                 self._waiting, self.trouble = False, "the hold time's process has ended"
-                self._pipe = self._process = None
+                self._aside = None
                 return True
             if number != self._number:
                 continue
@@ -98,39 +97,23 @@ class Hold:
             return f"{before}holds beyond {duration(found.horizon_h)}{sure}"
         return f"{before}holds {duration(found.hold_h)}{sure}"
 
-    def _start(self) -> None:
-        import multiprocessing
-
-        context = multiprocessing.get_context("spawn")
-        self._pipe, theirs = context.Pipe()
-        self._process = context.Process(target=work, args=(theirs,), daemon=True)
-        self._process.start()
-        theirs.close()
-
     def stop(self) -> None:
         """Ends the process at once."""
-        if self._process is not None:
-            self._process.terminate()
-            self._process.join(timeout=2.0)
-        if self._pipe is not None:
-            self._pipe.close()
-        self._process, self._pipe, self._waiting = None, None, False
+        if self._aside is not None:
+            self._aside.end()
+        self._aside, self._waiting = None, False
 
 
 def work(pipe: Connection) -> None:
     """What the process does: always the newest question, first without draws, then with them."""
-    import signal
-
-    signal.signal(signal.SIGINT, signal.SIG_IGN)
-    with suppress(EOFError, OSError):
-        asked = pipe.recv()
-        while True:
-            while pipe.poll():
-                asked = pipe.recv()
-            with suppress(Stopped):
-                _answer(pipe, asked)
-            if not pipe.poll():
-                asked = pipe.recv()
+    asked = pipe.recv()
+    while True:
+        while pipe.poll():
+            asked = pipe.recv()
+        with suppress(Stopped):
+            _answer(pipe, asked)
+        if not pipe.poll():
+            asked = pipe.recv()
 
 
 def _answer(pipe: Connection, asked: _Asked) -> None:

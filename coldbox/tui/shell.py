@@ -87,6 +87,10 @@ class Shell:
             shell.say(settings.problems[0], "warn")
         return shell
 
+    def key_name(self, action: str) -> str:
+        """The first key of an action, for a line that has no room for all."""
+        return self.keymap.shown(action).split(" or ")[0]
+
     # Moving about
 
     def go(self, name: str) -> None:

@@ -16,7 +16,7 @@ def head(frame: Frame, shell: Shell) -> None:
     """The first line: name, temperature, units, whether it is saved."""
     frame.fill(0, 0, frame.width, 1, "head")
     desk = shell.desk
-    help_word = f"{shell.keymap.shown('help')} help "
+    help_word = f"{shell.key_name('help')} help "
     right = frame.width
     if desk is None:
         frame.text(1, 0, f"Projects of {shell.folder.resolve()}", "head", right - len(help_word) - 3)

@@ -134,7 +134,7 @@ class Page(Layer):
         return self.shell.described(self.at)
 
     def hint(self) -> str:
-        keys = self.shell.keymap.shown
+        keys = self.shell.key_name
         return f"{keys('accept')} edit  {keys('add')} add"
 
 

@@ -69,7 +69,7 @@ class Page(Layer):
         frame.right(right, y, entry.findings or "…", style)
 
     def _empty(self, frame: Frame, area: Area) -> None:
-        keys = self.shell.keymap.shown
+        keys = self.shell.key_name
         said = (
             f"No project here is called that. {keys('new')} starts a new one."
             if self.filter.text
@@ -141,5 +141,5 @@ class Page(Layer):
         return f"{entry.name}: needs {entry.capacity or 'not known yet'}, {entry.findings or 'no'} findings"
 
     def hint(self) -> str:
-        keys = self.shell.keymap.shown
+        keys = self.shell.key_name
         return f"{keys('accept')} open  {keys('new')} new  {keys('duplicate_project')} copy  {keys('quit')} leave"

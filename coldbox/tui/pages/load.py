@@ -93,7 +93,7 @@ class Page(Layer):
         for row, (style, text) in enumerate(lines[: area.height - 1]):
             frame.text(area.x + 1, area.y + 1 + row, text, style, area.width - 2)
         if len(lines) > area.height - 1:
-            said = f" all of it: {self.shell.keymap.shown('accept')} "
+            said = f" all of it: {self.shell.key_name('accept')} "
             frame.right(area.x + area.width - 1, area.y, said, "dim")
 
     def _told(self, width: int) -> list[tuple[str, str]]:

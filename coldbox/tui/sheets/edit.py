@@ -105,7 +105,7 @@ class EditSheet(Layer):
     def hint(self) -> str:
         if self.editor is not None:
             return "Enter take  Esc back"
-        keys = self.shell.keymap.shown
+        keys = self.shell.key_name
         return f"type a value  {keys('raise')} {keys('lower')} step  {keys('default')} default  Esc done"
 
     # Keys
