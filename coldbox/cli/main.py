@@ -86,8 +86,10 @@ def _parser() -> argparse.ArgumentParser:
     lines = "\n".join(f"  {name:<8}  {line}" for name, line in COMMANDS.items())
     parser = _Parser(
         prog="coldbox",
-        usage="coldbox [-h] [--version] command ...",
-        description=f"Heat gain and refrigeration capacity of cold rooms and insulated boxes.\n\ncommands:\n{lines}",
+        usage="coldbox [-h] [--version] [FILE | command ...]",
+        description=f"Heat gain and refrigeration capacity of cold rooms and insulated boxes.\n\n"
+        f"  coldbox        the screens, on the projects of this folder\n"
+        f"  coldbox FILE   the screens, on that project\n\ncommands:\n{lines}",
         epilog=EXAMPLES,
         formatter_class=_Help,
     )
@@ -116,8 +118,10 @@ def _run(given: list[str]) -> int:
 def _without_command(given: list[str]) -> int:
     parser = _parser()
     word = parser.parse_args(given[:1]).command
-    if word is None:
+    if word is None and not (sys.stdin.isatty() and sys.stderr.isatty()):
         parser.print_help(sys.stderr)
+    elif word is None or word.endswith(".toml") or os.path.isfile(word):
+        return _screens(word)
     else:
         from difflib import get_close_matches
 
@@ -125,6 +129,14 @@ def _without_command(given: list[str]) -> int:
         hint = f' Nearest: "{near[0]}".' if near else ""
         print(f'coldbox: "{word}" is no command.{hint} There are: {", ".join(COMMANDS)}.', file=sys.stderr)
     return BAD_INPUT
+
+
+def _screens(file: str | None) -> int:
+    from pathlib import Path
+
+    from coldbox.tui import terminal
+
+    return terminal.run(file, Path())
 
 
 def _fault(error: Exception) -> int:

@@ -1,0 +1,1 @@
+"""What stands over a page for a while: a side sheet, a pick-list, help, a question."""

@@ -1,0 +1,205 @@
+"""The side sheet: the fields of one thing, and the editor of the one being typed."""
+
+from __future__ import annotations
+
+from coldbox.tui.desk import Refusal
+from coldbox.tui.frame import Frame, wrapped
+from coldbox.tui.layer import Area, Layer, Rows
+from coldbox.tui.sheet import Line, lines
+from coldbox.tui.sheets.pick import Item, PickList
+from coldbox.tui.shell import Shell
+from coldbox.tui.things import Thing
+from coldbox.tui.widgets.editor import Editor
+
+TOLD = 5  # lines at the foot of the sheet for what was understood, the usual range, the help
+
+
+class EditSheet(Layer):
+    """Fields of a thing: move, type, pick, raise, lower, go back to the default."""
+
+    where = "sheet"
+    topic = "sheet"
+
+    def __init__(self, shell: Shell, thing: Thing) -> None:
+        super().__init__(shell)
+        self.thing = thing
+        self.rows = Rows()
+        self.room = 10
+        self.editor: Editor | None = None
+        self.refused = ""
+        self._lines: list[Line] | None = None
+
+    @property
+    def lines(self) -> list[Line]:
+        """The fields as they stand; made anew after a change."""
+        if self._lines is None:
+            assert self.shell.desk is not None
+            self._lines = lines(self.shell.desk, self.thing)
+        return self._lines
+
+    @property
+    def line(self) -> Line:
+        """The field under the cursor."""
+        return self.lines[min(self.rows.at, len(self.lines) - 1)]
+
+    @property
+    def typing(self) -> bool:
+        return self.editor is not None
+
+    def changed(self) -> None:
+        self._lines = None
+
+    # Drawing
+
+    def draw(self, frame: Frame, area: Area) -> None:
+        width = area.width if area.width < 60 else min(max(46, area.width * 2 // 5), 64)
+        x, height = area.x + area.width - width, area.height
+        frame.box(x, area.y, width, height, self.thing.label)
+        fields = self.lines
+        self.room = max(height - 3 - TOLD, 1)
+        labels = min(max((len(line.label) for line in fields), default=0), width * 2 // 5)
+        for row, index in enumerate(self.rows.shown(len(fields), self.room)):
+            self._field(frame, x + 2, area.y + 1 + row, width - 4, labels, index)
+        more = len(fields) - self.rows.first - self.room
+        frame.text(x, area.y + height - 2 - TOLD, "├" + "─" * (width - 2) + "┤", "line")
+        if more > 0:
+            frame.right(x + width - 2, area.y + height - 2 - TOLD, f" {more} more below ", "dim")
+        self._told(frame, x + 2, area.y + height - 1 - TOLD, width - 4)
+
+    def _field(self, frame: Frame, x: int, y: int, width: int, labels: int, index: int) -> None:
+        line, here = self.lines[index], index == self.rows.at
+        frame.text(x, y, line.label, "key" if here else "text", labels)
+        column, room = x + labels + 2, width - labels - 2
+        if here and self.editor is not None:
+            shown, at = self.editor.shown(room)
+            frame.fill(column, y, room, 1, "field")
+            frame.text(column, y, shown, "field", room)
+            frame.cursor = (column + at, y)
+            return
+        note = "" if line.origin == "typed" else line.origin
+        end = frame.text(column, y, line.shown or "-", line.origin, room - len(note) - 1)
+        frame.right(x + width, y, note, "dim")
+        if here:
+            frame.restyle(x, y, max(end - x, 1), "cursor")
+            frame.cursor = (x, y)
+
+    def _told(self, frame: Frame, x: int, y: int, width: int) -> None:
+        line = self.line
+        if self.refused:
+            told = [("wrong", self.refused)]
+        else:
+            told = [("good", f"= {line.understood}")] if line.understood else []
+            told += [("text", line.help)] if line.help else []
+            told += [("dim", f"usual {line.usual_range}")] if line.usual_range else []
+            told += [("dim", f"from {line.source}")] if line.source else []
+        rows = [(style, row) for style, text in told for row in wrapped(text, width)]
+        for at, (style, row) in enumerate(rows[:TOLD]):
+            frame.text(x, y + at, row, style, width)
+
+    def spoken(self) -> str:
+        line = self.line
+        value = self.editor.text if self.editor is not None else line.shown or "nothing"
+        state = self.refused or ("being typed" if self.editor is not None else line.origin)
+        return f"{line.label}: {value}, {state}"
+
+    def hint(self) -> str:
+        if self.editor is not None:
+            return "Enter take  Esc back"
+        keys = self.shell.keymap.shown
+        return f"type a value  {keys('raise')} {keys('lower')} step  {keys('default')} default  Esc done"
+
+    # Keys
+
+    @property
+    def takes_letters(self) -> bool:
+        return True
+
+    def act(self, action: str) -> bool:
+        if self.editor is not None:
+            return self._act_typing(action)
+        match action:
+            case "accept":
+                self._open()
+            case "raise" | "lower":
+                self._step(1 if action == "raise" else -1)
+            case "default":
+                self._to_default()
+            case _:
+                return self.rows.move(action, len(self.lines), self.room)
+        return True
+
+    def _act_typing(self, action: str) -> bool:
+        if action == "accept":
+            if self._take():
+                self.rows.move("down", len(self.lines), self.room)
+            return True
+        if action == "close":
+            self.editor, self.refused = None, ""
+            return True
+        if action in ("up", "down", "page_up", "page_down"):
+            return not self._take() or self.rows.move(action, len(self.lines), self.room)
+        return action in ("left", "right", "first", "last")
+
+    def _open(self) -> None:
+        """Into the field: a list where words are expected, else the editor on what stands there."""
+        line = self.line
+        if line.choices:
+            items = [Item(choice, choice) for choice in line.choices]
+            self.shell.over(PickList(self.shell, line.label, items, self._picked, at=line.shown))
+        else:
+            self.editor = Editor(line.shown if line.origin == "typed" else "")
+
+    def _picked(self, value: str) -> None:
+        self.editor = Editor(value)
+        self._take()
+
+    def _take(self) -> bool:
+        """What was typed goes onto the desk; whether it was understood."""
+        assert self.editor is not None and self.shell.desk is not None
+        line = self.line
+        found = self.shell.desk.set(line.path, self.editor.text.strip())
+        if isinstance(found, Refusal):
+            self.refused = found.text
+            return False
+        self.editor, self.refused = None, ""
+        self.shell.edited()
+        self.shell.say(f"{line.label}: {found.text}", "good")
+        return True
+
+    def key(self, key: str) -> bool:
+        if self.editor is None:
+            return False
+        self.refused = ""
+        return self.editor.key(key)
+
+    def type(self, text: str) -> bool:
+        if self.editor is None:
+            self.editor = Editor()
+        self.refused = ""
+        self.editor.type(text)
+        return True
+
+    def paste(self, text: str) -> bool:
+        if self.editor is None:
+            self.editor = Editor()
+        left = self.editor.paste(text)
+        if left:
+            self.shell.say(f"Of {left + 1} lines pasted the first is taken: a field holds one.")
+        return True
+
+    def _step(self, steps: int) -> None:
+        desk = self.shell.desk
+        assert desk is not None
+        found = desk.raised(self.line.path, steps)
+        if isinstance(found, Refusal):
+            self.refused = found.text
+        else:
+            self.shell.edited()
+            self.shell.say(f"{self.line.label}: {found.text}", "good")
+
+    def _to_default(self) -> None:
+        desk = self.shell.desk
+        assert desk is not None
+        if self.line.origin == "typed":
+            desk.remove(self.line.path)
+            self.shell.edited()
