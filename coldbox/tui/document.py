@@ -132,9 +132,10 @@ def _typed(field: Field, text: str, system: System) -> Any:
     try:
         entered = values.from_text(field, text, system)
     except values.Wrong as wrong:
-        unit = display_unit(field.kind, system).unit if field.kind in KINDS else ""
-        if not unit or not _bare(text):
+        declared = KINDS.get(field.kind)
+        if declared is None or not declared.si_display or not _bare(text):
             raise Refused(str(wrong)) from None
+        unit = display_unit(field.kind, system).unit
         text = f"{text} {unit}"
         try:
             entered = values.from_text(field, text, system)

@@ -21,7 +21,7 @@ from coldbox.units import compass_point, show, show_number
 System = Literal["SI", "IP"]
 SHADES: Final = ((3.0, " ", "shade0"), (6.0, "░", "shade1"), (12.0, "▒", "shade2"), (25.0, "▓", "shade3"))
 HOTTEST: Final = ("█", "shade4")
-LEAST: Final = (44, 13)  # columns and rows below which a list is drawn instead
+LEAST: Final = (44, 14)  # columns and rows below which a list is drawn instead
 NARROWEST: Final = 9  # columns inside a wall
 TURN: Final = {"front": 0.0, "left": 90.0, "back": 180.0, "right": 270.0}
 WALLS: Final = ("left", "front", "right", "back")
