@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import ClassVar, Literal
 
 from coldbox.paper import text
-from coldbox.paper.document import Document
+from coldbox.paper.document import Curve, Document, Heading, Paragraph
 from coldbox.timeline.results import Outage
 from coldbox.tui.desk import Desk
 from coldbox.tui.frame import Frame, wrapped
@@ -26,7 +26,8 @@ class Printed(Layer):
         self.rows = Rows()
         self.room = 10
         self._lines: list[str] = []
-        self._made: tuple[object, ...] = ()
+        self._found: Outage | None = None  # what the lines were made of, and how
+        self._how: tuple[object, ...] = ()
 
     def result(self, desk: Desk) -> Outage | None:
         """What the hold time's process has found."""
@@ -43,10 +44,11 @@ class Printed(Layer):
             self._absent(frame, area)
             return
         width = min(area.width - 2, WIDEST)
-        made = (found, desk.system, width, frame.ascii_drawing)
-        if made != self._made:
-            page = text.render(self.document(found, desk.system), width=width, ascii_only=frame.ascii_drawing)
-            self._lines, self._made = page.splitlines(), made
+        how = (desk.system, width, frame.ascii_drawing)
+        if found is not self._found or how != self._how:
+            document = curve_first(self.document(found, desk.system), coming=found.spread is None)
+            page = text.render(document, width=width, ascii_only=frame.ascii_drawing)
+            self._lines, self._found, self._how = page.splitlines(), found, how
         stale = desk.hold_stale
         self.room = max(area.height - (1 if stale else 0), 1)
         last = max(len(self._lines) - self.room, 0)
@@ -84,3 +86,19 @@ class Printed(Layer):
     def hint(self) -> str:
         more = len(self._lines) - self.rows.at - self.room
         return f"{more} more lines, Down" if more > 0 else ""
+
+
+def curve_first(document: Document, *, coming: bool) -> Document:
+    """The document as it is read on a screen: the answer, the curve, then all else. coming: its spread is not made yet."""
+    blocks = list(document.blocks)
+    answer = next(
+        (at for at, block in enumerate(blocks) if isinstance(block, Heading) and block.level > 1), len(blocks)
+    )
+    told = [one for one in blocks[:answer] if not (coming and isinstance(one, Paragraph) and UNSURE in one.text)]
+    told += [Paragraph(text="how sure: being computed", indent=1)] if coming else []
+    curves = [one for one in blocks[answer:] if isinstance(one, Curve)]
+    rest = [one for one in blocks[answer:] if not isinstance(one, Curve)]
+    return Document(title=document.title, blocks=(*told, *curves, *rest))
+
+
+UNSURE = "not looked into"
