@@ -58,6 +58,7 @@ class Shell:
         self.clipboard = ""
         self.exit_code: int | None = None
         self.unsaved_edit = False
+        self.with_hold = True  # whether a project on the desk gets its hold time
         self.last_words: list[str] = []
         self.page: Layer = Layer(self)
 

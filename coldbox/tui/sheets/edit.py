@@ -124,6 +124,7 @@ class EditSheet(Layer):
     def act(self, action: str) -> bool:
         if self.editor is not None:
             return self._act_typing(action)
+        self.refused = ""
         match action:
             case "accept":
                 self._open()
