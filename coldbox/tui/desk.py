@@ -44,6 +44,17 @@ def _after(hours: float) -> str:
     return f"{max(hours, 0.0):.4g} h"
 
 
+class _Trial(Record):
+    """A value that is being typed, and what it would come to; beside it what held before."""
+
+    path: str
+    text: str
+    document: Document
+    project: Project
+    load: Load
+    before: tuple[Project | None, Load | None]
+
+
 class Desk:
     """A project on the desk. `document` is never changed in place; whoever keeps one keeps that state."""
 
@@ -66,6 +77,7 @@ class Desk:
         self.system: System = "IP" if self.document.get("units") == "IP" else "SI"
         self.library = shop.library(path)
         self.hold = Hold(wanted=hold)
+        self._trial: _Trial | None = None
         self._compute()
 
     # Opening and closing
@@ -177,8 +189,50 @@ class Desk:
 
     # Changing
 
+    def try_out(self, path: str, text: str) -> Understood | Refusal:
+        """What a text would come to while it is typed: project and account follow, the document does not yet.
+
+        `set` with the same text takes it; anything else, or `drop_trial`, lets it fall.
+        """
+        self.drop_trial()
+        try:
+            changed = documents.with_value(self.document, path, text, self.system)
+        except Refused as refused:
+            return Refusal(text=str(refused))
+        made = self._made(changed)
+        if not isinstance(made, Project):
+            return Refusal(text=made[0].text if made else "")
+        try:
+            account = load(made)
+        except ColdboxError as error:
+            return Refusal(text=str(error))
+        self.accounts += 1
+        self._trial = _Trial(
+            path=path, text=text, document=changed, project=made, load=account, before=(self.project, self.load)
+        )
+        self.project, self.load = made, account
+        self.hold.stale = self.hold.outage is not None
+        return Understood(text=understood(path, documents.value_at(changed, path), self.system) or text.strip())
+
+    def drop_trial(self) -> None:
+        """What held before somebody began to type holds again."""
+        if self._trial is not None:
+            self.project, self.load = self._trial.before
+            self.hold.stale = self.hold.busy and self.hold.outage is not None
+            self._trial = None
+
     def set(self, path: str, text: str) -> Understood | Refusal:
         """A value as somebody typed it; a Refusal changes nothing."""
+        trial = self._trial
+        self.drop_trial()
+        if trial is not None and (trial.path, trial.text) == (path, text):
+            self._done.append((f"{path} = {text.strip()}", self.document))
+            self._undone.clear()
+            self.document = trial.document
+            self.problems, self.project, self.load = (), trial.project, trial.load
+            self._ask_hold()
+            said = understood(path, documents.value_at(self.document, path), self.system)
+            return Understood(text=said or text.strip())
         try:
             changed = documents.with_value(self.document, path, text, self.system)
         except Refused as refused:

@@ -121,7 +121,8 @@ def _worst(findings: Iterable[Finding]) -> str:
     """How many findings of the worst level, leaving out what is told of every box."""
     found: list[str] = [one.level for one in findings if not one.standing]
     worst = next((level for level in ("danger", "caution", "note") if level in found), "")
-    return f"{found.count(worst)} {worst}" if worst else "none"
+    count = found.count(worst)
+    return f"{count} {worst}{'s' if count > 1 else ''}" if worst else "none"
 
 
 def _held(hold_h: float | None, horizon_h: float, limited: bool) -> str:

@@ -92,9 +92,9 @@ def _pages(frame: Frame, shell: Shell, y: int) -> None:
     from coldbox.tui.keymap import PAGES
 
     x = 1
-    if shell.desk is not None and not shell.top.typing:
+    if shell.desk is not None and not shell.sheets:
         for number, name in enumerate(PAGES, 1):
             here = shell.pages.get(name) is shell.page
             x = frame.text(x, y, f"{number} {name.capitalize()}", "title" if here else "dim") + 2
     hint = shell.top.hint()
-    frame.text(max(x, frame.width - len(hint) - 1) if shell.desk is not None else x, y, hint, "key", frame.width - x)
+    frame.text(max(x, frame.width - len(hint) - 1) if x > 1 else x, y, hint, "key", frame.width - x)

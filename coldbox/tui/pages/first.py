@@ -44,8 +44,8 @@ class Page(Layer):
         frame.text(column, area.y, shown, "field")
         frame.cursor = (column + at, area.y)
         right = area.x + min(area.width, 110) - 1
-        frame.right(right - 24, area.y + 1, "needs", "dim")
-        frame.right(right - 9, area.y + 1, "holds", "dim")
+        frame.right(right - 22, area.y + 1, "needs", "dim")
+        frame.right(right - 12, area.y + 1, "holds", "dim")
         frame.right(right, area.y + 1, "findings", "dim")
         self.room, self._places = max(area.height - 3, 1), []
         if not found:
@@ -59,13 +59,13 @@ class Page(Layer):
         style = "cursor" if here else "text"
         if here:
             frame.fill(x - 1, y, right - x + 2, 1, "cursor")
-        names = max(right - x - 38, 12)
+        names = max(right - x - 36, 12)
         frame.text(x, y, entry.name, style, names)
         if entry.broken:
             frame.text(x + names + 1, y, entry.broken, style if here else "wrong", right - x - names - 1)
             return
-        frame.right(right - 24, y, entry.capacity or "…", style)
-        frame.right(right - 9, y, entry.hold or "…", style)
+        frame.right(right - 22, y, entry.capacity or "…", style)
+        frame.right(right - 12, y, entry.hold or "…", style)
         frame.right(right, y, entry.findings or "…", style)
 
     def _empty(self, frame: Frame, area: Area) -> None:
@@ -138,7 +138,8 @@ class Page(Layer):
         entry = self._here(found)
         if entry.broken:
             return f"{entry.name}: {entry.broken}"
-        return f"{entry.name}: needs {entry.capacity or 'not known yet'}, {entry.findings or 'no'} findings"
+        said = (f"needs {entry.capacity}", entry.hold and f"holds {entry.hold}", f"findings: {entry.findings}")
+        return f"{entry.name}: {', '.join(part for part in said if part) if entry.capacity else 'not known yet'}"
 
     def hint(self) -> str:
         keys = self.shell.key_name

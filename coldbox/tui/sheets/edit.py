@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from coldbox.tui.desk import Refusal
+from coldbox.tui.desk import Refusal, Understood
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.layer import Area, Layer, Rows
 from coldbox.tui.sheet import Line, lines
@@ -11,6 +11,7 @@ from coldbox.tui.shell import Shell
 from coldbox.tui.things import Thing
 from coldbox.tui.widgets.editor import Editor
 
+FIELD_KEYS = {"next_page": "down", "previous_page": "up"}  # Tab goes from field to field here
 TOLD = 5  # lines at the foot of the sheet for what was understood, the usual range, the help
 
 
@@ -27,6 +28,7 @@ class EditSheet(Layer):
         self.room = 10
         self.editor: Editor | None = None
         self.refused = ""
+        self.meant = ""  # what is understood so far of what is being typed
         self._lines: list[Line] | None = None
 
     @property
@@ -77,7 +79,8 @@ class EditSheet(Layer):
             frame.cursor = (column + at, y)
             return
         note = "" if line.origin == "typed" else line.origin
-        end = frame.text(column, y, line.shown or "-", line.origin, room - len(note) - 1)
+        shown, style = (line.shown, line.origin) if line.shown else (line.reason or "nothing", "dim")
+        end = frame.text(column, y, shown, style, room - (len(note) + 1 if note else 0))
         frame.right(x + width, y, note, "dim")
         if here:
             frame.restyle(x, y, max(end - x, 1), "cursor")
@@ -88,7 +91,9 @@ class EditSheet(Layer):
         if self.refused:
             told = [("wrong", self.refused)]
         else:
-            told = [("good", f"= {line.understood}")] if line.understood else []
+            meant = self.meant if self.editor is not None else line.understood
+            told = [("good", f"= {meant}")] if meant else []
+            told += [("dim", f"default: {line.reason}")] if line.origin == "default" and line.reason else []
             told += [("text", line.help)] if line.help else []
             told += [("dim", f"usual {line.usual_range}")] if line.usual_range else []
             told += [("dim", f"from {line.source}")] if line.source else []
@@ -98,15 +103,17 @@ class EditSheet(Layer):
 
     def spoken(self) -> str:
         line = self.line
-        value = self.editor.text if self.editor is not None else line.shown or "nothing"
-        state = self.refused or ("being typed" if self.editor is not None else line.origin)
-        return f"{line.label}: {value}, {state}"
+        if self.editor is not None:
+            return f"{line.label}: {self.editor.text}, {self.refused or 'being typed'}"
+        said = f"{line.label}: {line.shown or line.reason or 'nothing'}"
+        return f"{said}, {line.origin}" if line.origin else said
 
     def hint(self) -> str:
         if self.editor is not None:
             return "Enter take  Esc back"
         keys = self.shell.key_name
-        return f"type a value  {keys('raise')} {keys('lower')} step  {keys('default')} default  Esc done"
+        steps = f"{keys('raise')} {keys('lower')} step"
+        return f"type a value  {keys('accept')} change it  {steps}  {keys('default')} default  Esc done"
 
     # Keys
 
@@ -125,7 +132,7 @@ class EditSheet(Layer):
             case "default":
                 self._to_default()
             case _:
-                return self.rows.move(action, len(self.lines), self.room)
+                return self.rows.move(FIELD_KEYS.get(action, action), len(self.lines), self.room)
         return True
 
     def _act_typing(self, action: str) -> bool:
@@ -134,8 +141,9 @@ class EditSheet(Layer):
                 self.rows.move("down", len(self.lines), self.room)
             return True
         if action == "close":
-            self.editor, self.refused = None, ""
+            self._stop_typing()
             return True
+        action = FIELD_KEYS.get(action, action)
         if action in ("up", "down", "page_up", "page_down"):
             return not self._take() or self.rows.move(action, len(self.lines), self.room)
         return action in ("left", "right", "first", "last")
@@ -161,28 +169,46 @@ class EditSheet(Layer):
         if isinstance(found, Refusal):
             self.refused = found.text
             return False
-        self.editor, self.refused = None, ""
+        self._stop_typing()
         self.shell.edited()
         self.shell.say(f"{line.label}: {found.text}", "good")
         return True
 
     def key(self, key: str) -> bool:
-        if self.editor is None:
+        if self.editor is None or not self.editor.key(key):
             return False
-        self.refused = ""
-        return self.editor.key(key)
+        self._follow()
+        return True
 
     def type(self, text: str) -> bool:
         if self.editor is None:
             self.editor = Editor()
-        self.refused = ""
         self.editor.type(text)
+        self._follow()
         return True
+
+    def _follow(self) -> None:
+        """The answer follows what is typed, as far as it can be understood."""
+        assert self.editor is not None and self.shell.desk is not None
+        self.refused, text = "", self.editor.text.strip()
+        found = self.shell.desk.try_out(self.line.path, text) if text else None
+        if found is None:
+            self.shell.desk.drop_trial()
+        self.meant = found.text if isinstance(found, Understood) and found.text != text else ""
+
+    def _stop_typing(self) -> None:
+        self.editor, self.refused, self.meant = None, "", ""
+        if self.shell.desk is not None:
+            self.shell.desk.drop_trial()
+
+    def leave(self) -> None:
+        self._stop_typing()
 
     def paste(self, text: str) -> bool:
         if self.editor is None:
             self.editor = Editor()
         left = self.editor.paste(text)
+        self._follow()
         if left:
             self.shell.say(f"Of {left + 1} lines pasted the first is taken: a field holds one.")
         return True
