@@ -38,7 +38,7 @@ def of_limits(found: Outage) -> list[LimitResult]:
 def clock_blocks(found: Outage, system: System) -> Iterator[Block]:
     """The temperatures by the clock with what happens, then the same as a curve."""
     yield _table(found, system)
-    drawn = _curve(found, system)
+    drawn = curve(found, system)
     if drawn is not None:
         yield drawn
 
@@ -105,6 +105,11 @@ def _tracks(found: Outage) -> list[_Track]:
     return tracks
 
 
+def tracks(found: Outage) -> list[tuple[str, FloatArray]]:
+    """What is shown of a run through time: names and °C, nan where something is not there."""
+    return [(track.label, track.values) for track in _tracks(found)]
+
+
 def _values(found: Outage, track: _Track, at: list[float]) -> FloatArray:
     """Figures at some instants: straight between those of the series, of which one without a figure has none."""
     return np.asarray(np.interp(at, found.trace.t_h, track.values))
@@ -144,7 +149,8 @@ def _instants(found: Outage, told: list[float]) -> list[float]:
     return sorted({*fixed, *regular[: max(MOST_ROWS - len(fixed), 0)]})
 
 
-def _curve(found: Outage, system: System) -> Curve | None:
+def curve(found: Outage, system: System) -> Curve | None:
+    """The temperatures through time with the limits; None where there is too little to draw."""
     series = found.trace
     if len(series.t_h) < 3:
         return None

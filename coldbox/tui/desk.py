@@ -15,9 +15,11 @@ from coldbox.account.entry import Load
 from coldbox.account.load import load
 from coldbox.errors import BadProject, ColdboxError, Problem
 from coldbox.project import codec, journal, lock, shop, store
+from coldbox.project.fields import TABLES
 from coldbox.project.model import Project
 from coldbox.project.resolve import resolve
 from coldbox.project.revise import revised
+from coldbox.project.setting import named
 from coldbox.record import Record
 from coldbox.tui import document as documents
 from coldbox.tui.document import Document, Refused, System
@@ -36,6 +38,10 @@ class Refusal(Record):
     """Why a text will not do, and what would."""
 
     text: str
+
+
+def _after(hours: float) -> str:
+    return f"{max(hours, 0.0):.4g} h"
 
 
 class _Trial(Record):
@@ -259,6 +265,25 @@ class Desk:
         changed, path = documents.with_new(self.document, table, face)
         self._change(f"new {path}", changed)
         return path
+
+    def open_door(self, hours: float) -> str:
+        """A door that stands open for ten minutes, so many hours into the outage; which one. Raises Refused."""
+        doors = self.document.get("doors", [])
+        names = named(TABLES["doors"], doors) if isinstance(doors, list) else []
+        if not any(names):
+            raise Refused("There is no door with a name to open.")
+        name = next(name for name in names if name)
+        event = {"at": _after(hours), "what": "door open", "door": name, "lasts": "10 min"}
+        self._change(f"{name} open at {_after(hours)}", documents.with_event(self.document, event))
+        return name
+
+    def bring_ice(self, hours: float) -> str:
+        """Five kilograms of ice that come so many hours into the outage; what the pack is called."""
+        changed, path = documents.with_new(self.document, "packs")
+        name = path.partition(".")[2]
+        event = {"at": _after(hours), "what": "pack in", "pack": name}
+        self._change(f"{name} in at {_after(hours)}", documents.with_event(changed, event))
+        return name
 
     def duplicate(self, path: str) -> str:
         """The same thing once more; its key path. Raises Refused."""

@@ -103,6 +103,14 @@ def with_new(document: Document, table: str, face: str = "") -> tuple[Document, 
     return changed, f"{table}.{name}"
 
 
+def with_event(document: Document, event: Mapping[str, Any]) -> Document:
+    """The document with one more thing that happens in the outage."""
+    changed = copy.deepcopy(document)
+    outage = changed.setdefault("outage", {})
+    outage.setdefault("events", []).append(dict(event))
+    return changed
+
+
 def with_copy(document: Document, path: str) -> tuple[Document, str]:
     """The document with the thing once more, under a name of its own, and its key path."""
     changed = copy.deepcopy(document)

@@ -51,6 +51,10 @@ _ELSEWHERE: Final = (
     Action("raise", "sheet", "a step up", ("right_square_bracket", "plus")),
     Action("lower", "sheet", "a step down", ("left_square_bracket", "minus")),
     Action("default", "sheet", "back to the default", ("backspace",)),
+    Action("earlier", "outage", "power off an hour earlier", ("less_than_sign", "comma")),
+    Action("later", "outage", "power off an hour later", ("greater_than_sign", "full_stop")),
+    Action("door", "outage", "open a door for 10 minutes at the cursor", ("o",)),
+    Action("ice", "outage", "bring 5 kg of ice at the cursor", ("i",)),
     Action("new", "first", "a new project", ("ctrl+n",)),
     Action("duplicate_project", "first", "a copy of this project", ("ctrl+d",)),
 )
@@ -58,8 +62,9 @@ ACTIONS: Final = (*(Action(id, "everywhere", words, keys) for id, words, *keys_ 
                     for keys in (tuple(keys_),)), *_ELSEWHERE)  # fmt: skip
 _SHOWN: Final = {
     "question_mark": "?", "colon": ":", "plus": "+", "minus": "-", "escape": "Esc", "enter": "Enter", "tab": "Tab",
-    "right_square_bracket": "]", "left_square_bracket": "[", "backspace": "Backspace", "delete": "Del",
-    "shift+tab": "Shift-Tab", "pageup": "PgUp", "pagedown": "PgDn", "home": "Home", "end": "End",
+    "less_than_sign": "<", "greater_than_sign": ">", "comma": ",", "full_stop": ".", "right_square_bracket": "]",
+    "left_square_bracket": "[", "backspace": "Backspace", "delete": "Del", "shift+tab": "Shift-Tab", "pageup": "PgUp",
+    "pagedown": "PgDn", "home": "Home", "end": "End",
 }  # fmt: skip
 
 

@@ -1,4 +1,4 @@
-"""The trip: leg by leg, and whether everything keeps its limits."""
+"""The trip: its legs and stops as a strip under the temperatures, and whether everything keeps its limits."""
 
 from __future__ import annotations
 
@@ -8,12 +8,13 @@ from coldbox.paper import trip as paper
 from coldbox.paper.document import Document
 from coldbox.timeline.results import Outage, Trip
 from coldbox.tui.desk import Desk
-from coldbox.tui.pages.printed import Printed
+from coldbox.tui.pages.along import Along
 
 
-class Page(Printed):
-    """The trip as the report prints it."""
+class Page(Along):
+    """The same curve on the trip's clock."""
 
+    where = "trip"
     title = "Trip"
     topic = "trip"
     nothing = (
@@ -26,3 +27,6 @@ class Page(Printed):
 
     def document(self, found: Outage, system: Literal["SI", "IP"]) -> Document:
         return paper.document(cast(Trip, found), system)
+
+    def _never(self, desk: Desk) -> bool:
+        return desk.project is not None and desk.project.trip is None
