@@ -265,11 +265,8 @@ class Shell:
 
     def go_to(self, path: str) -> None:
         """Stand on a thing in the carton, and open it."""
-        from coldbox.tui.pages.carton import Page
-
         self._turn("carton")
-        if isinstance(self.page, Page):
-            self.page.stand_on(path)
+        self.page.stand_on(path)
         self.open_sheet(path)
 
     def open_sheet(self, path: str) -> None:
@@ -297,11 +294,8 @@ class Shell:
         self._then_open(self.desk.add(table, "" if (table, face) == ("doors", "floor") else face))
 
     def _then_open(self, path: str) -> None:
-        from coldbox.tui.pages.carton import Page
-
         self.edited()
-        if isinstance(self.page, Page):
-            self.page.stand_on(path)
+        self.page.stand_on(path)
         self.open_sheet(path)
 
     def change_thing(self, action: str, path: str) -> None:
@@ -354,7 +348,7 @@ class Shell:
         self.unsaved_edit = True
         for page in self.pages.values():
             page.changed()
-        for sheet in self.sheets:
+        for sheet in self.sheets[:]:
             sheet.changed()
 
     def ask_to_leave(self, then: Callable[[], None]) -> None:

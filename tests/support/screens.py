@@ -1,4 +1,4 @@
-"""The screens without the toolkit: keys in, state and text out. Every key is kept, so that a tour can be played again."""
+"""The screens without the toolkit: keys in, state and text out. Every key is kept, to be played again elsewhere."""
 
 from __future__ import annotations
 
