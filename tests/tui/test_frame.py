@@ -5,10 +5,11 @@ from __future__ import annotations
 import unicodedata
 
 import pytest
-from coldbox.tui.frame import Frame, wrapped
-from coldbox.tui.plain import cells, width
 from hypothesis import given
 from hypothesis import strategies as st
+
+from coldbox.tui.frame import Frame, wrapped
+from coldbox.tui.plain import cells, width
 
 
 @given(st.text(max_size=60), st.integers(-70, 90), st.integers(-3, 8), st.booleans())
