@@ -4,8 +4,6 @@ from __future__ import annotations
 
 from rich.style import Style
 
-THEMES = ("terminal", "dark", "light", "plain")
-
 _DARK = {
     "text": "color(252) on color(234)",
     "dim": "color(245) on color(234)",

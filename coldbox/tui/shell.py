@@ -14,8 +14,7 @@ from coldbox.tui.desk import Desk
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.keymap import PAGES
 from coldbox.tui.layer import Area, Layer
-from coldbox.tui.looks import THEMES
-from coldbox.tui.settings import Settings, load_settings
+from coldbox.tui.settings import THEMES, Settings, load_settings
 from coldbox.tui.things import LISTS, Thing, thing, things
 
 BEGIN_NO_VALUE = ("help", "palette")  # their usual keys, ? and :, begin no value
