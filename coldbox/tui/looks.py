@@ -127,3 +127,8 @@ class Look:
         if made is None:
             made = self._made[name] = Style.parse(self._specs.get(name, self._specs["text"]))
         return made
+
+
+def known(theme: str) -> frozenset[str]:
+    """The names of the styles that a theme has."""
+    return frozenset(_SPECS[theme])
