@@ -77,7 +77,7 @@ class Page(Layer):
         frame.cursor = (area.x + 2, area.y + 1)
 
     def _mark(self, frame: Frame) -> None:
-        """The place under the cursor, reversed by its first line: more would be slow over a thin line."""
+        """The place under the cursor: its uppermost line reversed, which costs the line to the terminal least."""
         if self.at not in self._places:
             return
         x, y, width, _ = self._places[self.at]

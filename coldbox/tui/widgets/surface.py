@@ -2,15 +2,10 @@
 
 from __future__ import annotations
 
-import os
-from collections.abc import Mapping
-
-from rich.color import ColorSystem
 from rich.segment import Segment
 from textual.strip import Strip
 from textual.widget import Widget
 
-from coldbox.tui import plain
 from coldbox.tui.frame import Frame, Run
 from coldbox.tui.looks import Look
 
@@ -26,48 +21,37 @@ class Surface(Widget):
         super().__init__()
         self.look = look
         self.refreshed = 0  # lines repainted so far, for the tests of thrift
-        self.written = 0  # bytes sent for them
         self._rows: list[Row] = []
-        self._colours = colours(os.environ)
+        self._width = 0
+        self._painted = False  # whether the toolkit has painted this surface
+        self._cursor = (0, 0)
 
     def show(self, frame: Frame) -> None:
-        """Repaint what differs from the frame shown before."""
+        """Paint what differs from the frame shown before.
+
+        The toolkit repaints a line from its beginning; over a slow line that is ten times what has changed. So only
+        the first picture of each size goes its way, and what follows straight to the terminal.
+        """
         rows, before = frame.rows(), self._rows
         self._rows = rows
-        if len(rows) != len(before) or not self.is_mounted:
+        driver = self.app._driver
+        if len(rows) != len(before) or frame.width != self._width or not self._painted or driver is None:
+            self._width = frame.width
             self.refreshed += len(rows)
             self.refresh()
             return
-        changed = [
-            (y, begin, end)
-            for y, (row, old) in enumerate(zip(rows, before, strict=True))
-            if row != old
-            for begin, end in _differing(row, old)
-        ]
-        if changed:
-            self.refreshed += len({y for y, _, _ in changed})
-            self._write(changed, frame.cursor)
-
-    def _write(self, changed: list[tuple[int, int, int]], cursor: tuple[int, int] | None) -> None:
-        """Send the cells that differ, and nothing else, down the line.
-
-        The toolkit would write each line from its first column on: five times as much over a thin line. It still
-        paints the whole screen where it must, at the start and at another size.
-        """
-        driver = self.app._driver
-        if driver is None:
-            return
-        parts = []
-        for y, begin, end in changed:
-            parts.append(f"\x1b[{y + 1};{begin + 1}H")
-            for text, style in _stretches(self._rows[y], begin, end):
-                parts.append(self.look.style(style).render(text, color_system=self._colours))
-        if cursor is not None:
-            parts.append(f"\x1b[{cursor[1] + 1};{cursor[0] + 1}H")
-        written = "".join(parts)
-        self.written += len(written.encode())
-        driver.write(written)
-        driver.flush()
+        console, written = self.app.console, []
+        for y, (row, old) in enumerate(zip(rows, before, strict=True)):
+            if row != old:
+                self.refreshed += 1
+                strip = self._strip(row)
+                for begin, end in _differing(row, old):
+                    written.append(f"\x1b[{y + 1};{begin + 1}H{strip.crop(begin, end).render(console)}")
+        x, y = self.app.cursor_position
+        if written or (x, y) != self._cursor:
+            self._cursor = (x, y)
+            driver.write(f"{''.join(written)}\x1b[{y + 1};{x + 1}H")
+            driver.flush()
 
     def wear(self, look: Look) -> None:
         """Another theme."""
@@ -78,27 +62,12 @@ class Surface(Widget):
         """A line of the last frame."""
         if y >= len(self._rows):
             return Strip.blank(self.size.width, self.look.style("text"))
+        self._painted = True
+        return self._strip(self._rows[y])
+
+    def _strip(self, row: Row) -> Strip:
         style = self.look.style
-        return Strip([Segment(run.text, style(run.style)) for run in self._rows[y]])
-
-
-def _stretches(row: Row, begin: int, end: int) -> list[tuple[str, str]]:
-    """Text and style of the cells from one column to another; a wide character has an empty cell after it."""
-    found: list[tuple[str, str]] = []
-    place = 0
-    for run in row:
-        shown = plain.cells(run.text)
-        inside = "".join(shown[max(begin - place, 0) : max(end - place, 0)])
-        if inside:
-            found.append((inside, run.style))
-        place += len(shown)
-    return found
-
-
-def colours(environment: Mapping[str, str]) -> ColorSystem:
-    """How many colours a terminal is trusted to have."""
-    many = "256" in environment.get("TERM", "") or environment.get("COLORTERM", "")
-    return ColorSystem.EIGHT_BIT if many else ColorSystem.STANDARD
+        return Strip([Segment(run.text, style(run.style)) for run in row])
 
 
 def _differing(row: Row, old: Row) -> list[tuple[int, int]]:
@@ -126,8 +95,10 @@ def _cells(row: Row) -> list[tuple[str, str]]:
         if text.isascii():
             made.extend((character, style) for character in text)
             continue
+        from coldbox.tui.plain import cells
+
         last = " "
-        for cell in plain.cells(text):
+        for cell in cells(text):
             last = cell or last
             made.append((last, style))
     return made
