@@ -87,15 +87,17 @@ def _share(ppm: float) -> str:
 
 def _still_warm(found: Outcome) -> Iterator[Finding]:
     """Today's goods that the machine had not brought within their limits yet."""
-    for label in dict.fromkeys(one.body.label for one in found.run.still_warm if one.body is not None):
-        body = next(one.body for one in found.run.still_warm if one.body is not None and one.body.label == label)
-        yield Finding(
-            level="caution",
-            id="still-warm",
-            text=f"{label} had not come within its limit when this begins: it is not counted above. Look at it first",
-            rule="common practice",
-            path=f"lots.{body.lot.name}",
-        )
+    bodies = list({one.body.label: one.body for one in found.run.still_warm if one.body is not None}.values())
+    if not bodies:
+        return
+    names = "; ".join(body.label for body in bodies)
+    yield Finding(
+        level="caution",
+        id="still-warm",
+        text=f"not counted, beyond a limit when this begins: {names}. Look there first",
+        rule="common practice",
+        path=f"lots.{bodies[0].lot.name}" if len(bodies) == 1 else "lots",
+    )
 
 
 def _spoiling(found: Outcome) -> Iterator[Finding]:

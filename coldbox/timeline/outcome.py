@@ -60,6 +60,8 @@ class Outcome:
         body = one.body
         extreme = trace.highest if limit.side == "above" else trace.lowest
         comes = body is not None and body.kind == "coming"
+        start_c = middle(body.start_c if body is not None and comes else trace.first[one.signal])
+        worst_c = float(extreme[one.signal, 0])
         return LimitResult(
             lot="box" if body is None else body.label,
             side=limit.side,
@@ -68,9 +70,9 @@ class Outcome:
             allowed_min=float(limit.allowed_s) / 60.0,
             crossed_at_h=at,
             at_clock=self.clock(at),
-            start_c=middle(body.start_c if body is not None and comes else trace.first[one.signal]),
+            start_c=start_c,
             end_c=self._end(one),
-            worst_c=float(extreme[one.signal, 0]),
+            worst_c=worst_c if np.isfinite(worst_c) else start_c,  # what is taken out as it begins is never seen
             beyond_min=float(trace.beyond_s[one.watch, 0]) / 60.0,
             back_at_h=back_at,
             back_clock=self.clock(back_at),
