@@ -10,6 +10,7 @@ import numpy as np
 from coldbox.account.entry import GROUPS, Finding, Load
 from coldbox.paper.box import box_lines
 from coldbox.paper.document import Bars, Block, Column, Document, Heading, Paragraph, Table
+from coldbox.project.model import Project
 from coldbox.project.origins import defaults_used
 from coldbox.tables.load import source
 from coldbox.units import display_unit, show
@@ -239,10 +240,10 @@ def source_words(key: str) -> str:
     return f"{found['title']} ({found['where']}{memory})"
 
 
-def defaults_document(load: Load) -> Document:
-    """Every default this load used, with its reason."""
-    used = defaults_used(load.project, for_load=True)
+def defaults_document(project: Project, *, for_load: bool) -> Document:
+    """Every default that a load, or an outage or a trip as well, uses, with its reason."""
+    used = defaults_used(project, for_load=for_load)
     rows = tuple((path, value, reason) for path, value, reason in used)
     columns = (Column(title="key", gives=True), Column(title="value", gives=True), Column(title="why", gives=True))
-    head = Heading(text=f"{load.project.name}: {len(used)} defaults used", level=1)
-    return Document(title=load.project.name, blocks=(head, Table(columns=columns, rows=rows)))
+    head = Heading(text=f"{project.name}: {len(used)} defaults used", level=1)
+    return Document(title=project.name, blocks=(head, Table(columns=columns, rows=rows)))
