@@ -3,6 +3,7 @@
     import coldbox
     project = coldbox.open("projects/quay.toml")
     load = coldbox.load(project)
+    outage = coldbox.outage(project, draws=2000, seed=1)
 
 The public names are loaded on first use, so that importing this costs nothing.
 """
@@ -12,13 +13,19 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 __version__ = "0.1.0"
-__all__ = ["__version__", "load", "open"]
+__all__ = ["__version__", "load", "open", "outage", "trip"]
 
 if TYPE_CHECKING:
     from coldbox.account.load import load
     from coldbox.project.store import open
+    from coldbox.spread.public import outage, trip
 
-_HOMES = {"load": "coldbox.account.load", "open": "coldbox.project.store"}
+_HOMES = {
+    "load": "coldbox.account.load",
+    "open": "coldbox.project.store",
+    "outage": "coldbox.spread.public",
+    "trip": "coldbox.spread.public",
+}
 
 
 def __getattr__(name: str) -> object:

@@ -4,9 +4,16 @@ from __future__ import annotations
 
 import argparse
 import sys
+from collections.abc import Iterator
+from typing import TYPE_CHECKING, Literal
 
 from coldbox.cli import common
 from coldbox.errors import ColdboxError
+
+if TYPE_CHECKING:
+    from coldbox.project.model import Project
+    from coldbox.scene.finding import Finding
+    from coldbox.timeline.results import Kind
 
 EXAMPLES = """\
 examples:
@@ -22,15 +29,13 @@ def arguments(parser: argparse.ArgumentParser) -> None:
 
 def run(options: argparse.Namespace) -> int:
     """Print errors and findings of every file; 2 when one has errors, 1 when one has a danger of its own."""
-    from coldbox.account.load import load
     from coldbox.paper import check, data
 
     status = 0
     results = []
     for file in options.files:
         try:
-            project = common.open_project(file, options.set)
-            found = load(project).findings
+            found = tuple(_findings(file, options.set))
         except ColdboxError as error:
             status = 2
             print(error, file=sys.stderr)
@@ -44,3 +49,37 @@ def run(options: argparse.Namespace) -> int:
     if options.json:
         common.print_json(results)
     return status
+
+
+def _findings(file: str, pairs: list[str]) -> Iterator[Finding]:
+    """Of the account, of a run with every input at its middle, of the shop library; each said once."""
+    from coldbox.account.load import load
+    from coldbox.project import codec, shop, store
+    from coldbox.project.resolve import resolve
+    from coldbox.scene.finding import Finding
+
+    raw, problems = codec.read(store.read_text(file), file, common.settings(pairs))
+    library = shop.library(file)
+    project = resolve(raw, problems, library)
+    said = set()
+    for finding in (*load(project).findings, *_over_time(project)):
+        if (finding.text, finding.path) not in said:
+            said.add((finding.text, finding.path))
+            yield finding
+    for one in shop.differences(raw, library):
+        level: Literal["note", "caution"] = "note" if one.kind == "moved on" else "caution"
+        yield Finding(level=level, id=f"library {one.kind}", text=one.text, rule="shop library", path=one.path)
+
+
+def _over_time(project: Project) -> Iterator[Finding]:
+    """What an outage comes to, and a trip where there is one."""
+    from coldbox.scene.finding import Finding
+    from coldbox.spread import hold
+
+    kinds: tuple[Kind, ...] = ("outage",) if project.trip is None else ("outage", "trip")
+    for kind in kinds:
+        try:
+            yield from hold.run(project, kind, count=0).findings
+        except ColdboxError as error:
+            text = f"the {kind} cannot be computed: {str(error).strip()}"
+            yield Finding(level="caution", id=f"no {kind}", text=text, rule="", path=kind)

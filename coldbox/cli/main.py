@@ -20,6 +20,8 @@ DONE, CROSSED, BAD_INPUT, FAULT = 0, 1, 2, 3
 COMMANDS = {
     "new": "a project from an example or another project",
     "load": "the account of a day's heat and the capacity it asks for",
+    "outage": "how long it holds without power, who fails first, how sure that is",
+    "trip": "a trip leg by leg: whether everything keeps its limits",
     "check": "errors and findings of project files",
     "compare": "projects side by side, with what differs",
     "sources": "every method and table with its source",
@@ -30,10 +32,12 @@ examples:
   coldbox new shed --like quay        start from an example
   coldbox check projects/shed.toml    what is wrong, what to watch for
   coldbox load projects/shed.toml     every watt, and the capacity
+  coldbox outage projects/shed.toml   how long it holds, how sure
   coldbox sources --fields            every key a project file may hold
 
-Exit status: 0 done; 1 done, and something of this box is dangerous;
-2 bad input or usage; 3 a fault of the program."""
+Exit status: 0 done; 1 done, and a limit is crossed before the power is back
+or the asked time is over, or something of this box is dangerous;
+2 bad input or usage; 3 a fault of the program; 130 stopped with Ctrl-C."""
 
 
 def main(arguments: Sequence[str] | None = None) -> int:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 import numpy as np
 
@@ -12,7 +12,9 @@ from coldbox.physics.number import Number
 
 if TYPE_CHECKING:  # each command loads only its own half
     from coldbox.spread.capacity import CapacitySpread
+    from coldbox.spread.hold import HoldSpread
     from coldbox.spread.influence import Driver
+    from coldbox.timeline.results import LimitResult, Outage, Series, Trip
 
 Json = None | bool | int | float | str | list["Json"] | dict[str, "Json"]
 
@@ -69,6 +71,137 @@ def _driver(driver: Driver, unit: str) -> dict[str, Json]:
         f"at_lowest_{unit}": driver.at_lowest,
         f"at_highest_{unit}": driver.at_highest,
     }
+
+
+def outage_json(found: Outage) -> dict[str, Json]:
+    """An outage, pull-down or recovery as the contract's JSON object; what lies beyond the horizon is null."""
+    spread: HoldSpread | None = found.spread
+    gas = found.carbon_dioxide
+    return {
+        "name": found.project.name,
+        "kind": found.kind,
+        "hold_h": found.hold_h,
+        "horizon_h": found.horizon_h,
+        "asked_h": found.asked_h,
+        "power_back_h": found.power_back_h,
+        "start_clock": found.start_clock,
+        "reached_h": found.reached_h,
+        "reached_clock": found.reached_clock,
+        "first": None if found.first is None else _first(found.first),
+        "limits": [_limit(one) for one in found.limits],
+        **({} if spread is None else {"spread": _hold_spread(spread)}),
+        "heat_balance_error": found.heat_balance_error,
+        "packs": [
+            {"id": one.id, "left_kg": one.left_kg, "frozen": one.frozen, "spent_at_h": one.spent_at_h}
+            for one in found.packs
+        ],
+        "carbon_dioxide": None if gas is None else {key: _plain(value) for key, value in gas},
+        "events": [{"at_h": one.at_h, "clock": one.clock, "text": one.text} for one in found.events],
+        "inside": list(found.inside),
+        "stopped": list(found.stopped),
+        "notes": list(found.notes),
+        "facts": {key: _number(value) for key, value in found.facts.items()},
+        "trace": _trace(found.trace),
+        "findings": [finding_json(finding) for finding in found.findings],
+    }
+
+
+def trip_json(found: Trip) -> dict[str, Json]:
+    """A trip as the contract's JSON object: an outage's keys, and its legs and stops."""
+    legs: list[Json] = [
+        {
+            "kind": leg.kind,
+            "label": leg.label,
+            "from_h": leg.from_h,
+            "to_h": leg.to_h,
+            "worst_c": leg.worst_c,
+            "margin_k": leg.margin_k,
+            "worst_lot": leg.worst_lot,
+            "worst_where": leg.worst_where,
+            "air_highest_c": leg.air_highest_c,
+            "heading_deg": leg.heading,
+        }
+        for leg in found.legs
+    ]
+    return {**outage_json(found), "legs": legs}
+
+
+def _first(limit: LimitResult) -> dict[str, Json]:
+    return {
+        "lot": limit.lot,
+        "side": limit.side,
+        "where": limit.where,
+        "limit_c": limit.limit_c,
+        "at_h": limit.crossed_at_h,
+        "at_clock": limit.at_clock,
+    }
+
+
+def _limit(limit: LimitResult) -> dict[str, Json]:
+    return {
+        "lot": limit.lot,
+        "side": limit.side,
+        "where": limit.where,
+        "limit_c": limit.limit_c,
+        "allowed_min": limit.allowed_min,
+        "crossed_at_h": limit.crossed_at_h,
+        "at_clock": limit.at_clock,
+        "start_c": limit.start_c,
+        "end_c": limit.end_c,
+        "worst_c": limit.worst_c,
+        "beyond_min": limit.beyond_min,
+        "back_at_h": limit.back_at_h,
+        "back_clock": limit.back_clock,
+    }
+
+
+def _hold_spread(spread: HoldSpread) -> dict[str, Json]:
+    hours = spread.hours
+    return {
+        "draws": spread.draws,
+        "seed": spread.seed,
+        "p10_h": hours.p10,
+        "p50_h": hours.p50,
+        "p90_h": hours.p90,
+        "p10_error_h": hours.p10_error,
+        "p50_error_h": hours.p50_error,
+        "p90_error_h": hours.p90_error,
+        "never_share": spread.never.share,
+        "chance_of_asked": None if spread.asked is None else spread.asked.share,
+        "chance_error": None if spread.asked is None else spread.asked.error,
+        "limits": [
+            {"p10_h": one.p10, "p50_h": one.p50, "p90_h": one.p90, "first_share": share}
+            for one, share in zip(spread.limits, spread.first_shares, strict=True)
+        ],
+        "drivers": [_driver(one, "h") for one in spread.drivers],
+        "not_drawn": list(spread.left_out),
+    }
+
+
+def _trace(series: Series) -> dict[str, Json]:
+    lots: dict[str, Json] = {}
+    for name, lot in series.lots.items():
+        lots[name] = {
+            key: [float(one) if there else None for one, there in zip(values, lot.there, strict=True)]
+            for key, values in (("surface_c", lot.surface_c), ("mean_c", lot.mean_c), ("core_c", lot.core_c))
+        }
+    trace: dict[str, Json] = {
+        "t_h": _list(series.t_h),
+        "air_c": _list(series.air_c),
+        "humidity": _list(series.humidity),
+        "lots": lots,
+        "packs": {
+            name: {"left_kg": _list(pack.left_kg), "frozen": _list(pack.frozen)} for name, pack in series.packs.items()
+        },
+    }
+    for key, ppm in (("carbon_dioxide_ppm", series.carbon_dioxide_ppm), ("around_ppm", series.around_ppm)):
+        if ppm is not None:
+            trace[key] = _list(ppm)
+    return trace
+
+
+def _plain(value: Any) -> Json:
+    return value if value is None or isinstance(value, str) else float(value)
 
 
 def _entry(entry: Entry, peak_hour: int) -> dict[str, Json]:

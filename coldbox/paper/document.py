@@ -46,7 +46,28 @@ class Bars(Record):
     highest: str
 
 
-Block = Heading | Paragraph | Table | Bars
+class Line(Record):
+    """One line of a curve; nan where there is none. `label` stands at its end, or where it leaves off."""
+
+    label: str
+    values: tuple[float, ...]
+
+
+class Curve(Record):
+    """Figures through time: lines over the same instants, and levels that they should keep to.
+
+    `at` and the ticks are hours, `points` the instants of `at` that a table of few rows shows, by index.
+    """
+
+    unit: str
+    at: tuple[float, ...]
+    lines: tuple[Line, ...]
+    levels: tuple[tuple[str, float], ...]
+    ticks: tuple[tuple[float, str], ...]
+    points: tuple[int, ...]
+
+
+Block = Heading | Paragraph | Table | Bars | Curve
 
 
 class Document(Record):

@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import re
+from math import isnan
 
-from coldbox.paper.document import Bars, Block, Document, Heading, Paragraph, Table
+from coldbox.paper.document import Bars, Block, Curve, Document, Heading, Paragraph, Table
 
 _SPECIAL = re.compile(r"([\\`*_\[\]<>|#!])")
 
@@ -30,6 +31,19 @@ def _block(block: Block) -> str:
         case Bars():
             rows = "\n".join(f"| {hour:02d} | {value:.0f} |" for hour, value in enumerate(block.values))
             return f"| hour | {escape(block.label)}, W |\n| ---: | ---: |\n{rows}"
+        case Curve():
+            return _curve(block)
+
+
+def _curve(curve: Curve) -> str:
+    """A few points of every line; the levels stand in the head."""
+    levels = "".join(f"; {escape(label)}" for label, _ in curve.levels)
+    heads = ["h", *(f"{escape(line.label)}, {escape(curve.unit)}" for line in curve.lines)]
+    lines = [" | ".join(heads), " | ".join("---:" for _ in heads)]
+    for point in curve.points:
+        figures = (line.values[point] for line in curve.lines)
+        lines.append(" | ".join((f"{curve.at[point]:g}", *("" if isnan(one) else f"{one:.1f}" for one in figures))))
+    return f"Temperatures{levels}\n\n" + "\n".join(f"| {line} |" for line in lines)
 
 
 def _table(table: Table) -> str:

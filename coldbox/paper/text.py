@@ -5,7 +5,7 @@ from __future__ import annotations
 import textwrap
 from collections.abc import Iterator
 
-from coldbox.paper.document import Bars, Block, Document, Heading, Paragraph, Table
+from coldbox.paper.document import Bars, Block, Curve, Document, Heading, Paragraph, Table
 
 STEPS = "▁▂▃▄▅▆▇█"
 ASCII_STEPS = "_.-=+*%#"
@@ -34,6 +34,10 @@ def _block(block: Block, width: int, ascii_only: bool) -> list[str]:
             return _table(block, width)
         case Bars():
             return _bars(block, width, ascii_only)
+        case Curve():
+            from coldbox.paper import curve
+
+            return curve.drawn(block, width, ascii_only=ascii_only)
 
 
 def _table(table: Table, width: int) -> list[str]:

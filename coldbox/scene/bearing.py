@@ -21,7 +21,7 @@ def worst_bearing(body: Body, weather: Weather) -> float | None:
     For each point: max over the hours of the sum over all sunlit surfaces of g (1 - shade) A I through glass, and
     through walls of A F⁻¹[H / (h + Y) · F(α (1 - shade) I)], with the film h of ISO 6946 and the panel's transfer H and
     admittance Y.
-    Draws are taken at their mean, so that all share one bearing. None where no wall stands in the sun.
+    The first draw, the middle of all, decides for all. None where no wall stands in the sun.
     """
     walls = [one for one in body.surfaces if one.behind == "outdoors" and one.face in TURN]
     if not walls or weather.sun is None:
@@ -41,15 +41,13 @@ def worst_bearing(body: Body, weather: Weather) -> float | None:
 
 
 def _falls_on(weather: Weather, azimuth: Number, tilt: float) -> FloatArray:
-    """Hourly means on surfaces of some azimuths, (…, 24) W/m², at the middle of the draws."""
+    """Hourly means on surfaces of some azimuths, (…, 24) W/m², in the first draw."""
     day = weather.sun
     assert day is not None
-    beam, diffuse, altitude = (
-        figure if figure.ndim == 1 else figure.mean(axis=0)
-        for figure in (day.beam_normal, day.diffuse_horizontal, day.altitude)
+    beam, diffuse, altitude, sun_azimuth = (
+        figure.reshape(-1, figure.shape[-1])[0]
+        for figure in (day.beam_normal, day.diffuse_horizontal, day.altitude, day.azimuth)
     )
-    # Directions have no mean across north: those of the first draw stand for all.
-    sun_azimuth = day.azimuth.reshape(-1, day.azimuth.shape[-1])[0]
     reflects = _middle(weather.ground_reflects)
     return sun.day_on_surface(
         beam, diffuse, altitude, sun_azimuth, azimuth, tilt, reflects, overcast=day.overcast
@@ -81,4 +79,4 @@ class _Layer(Record):
 
 
 def _middle(figure: Number) -> float:
-    return figure if isinstance(figure, float) else float(np.mean(figure))
+    return figure if isinstance(figure, float) else float(np.ravel(figure)[0])

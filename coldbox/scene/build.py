@@ -13,7 +13,7 @@ from coldbox.scene.weather import weather
 
 
 def build(project: Project) -> Scene:
-    """Everything that computes starts from this.
+    """Everything the account and the timeline start from.
 
     Pressure follows the site's altitude (sea level without a site). Behind a face named "road" or "void" lies the
     outdoor air, without sun and without sky: under a vehicle, or in a vented hollow under a floor. A box in the sun

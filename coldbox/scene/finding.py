@@ -1,4 +1,4 @@
-"""A finding: what there is to say about a box beside its numbers."""
+"""A finding: what account and timeline have to say about a box beside its numbers."""
 
 from __future__ import annotations
 

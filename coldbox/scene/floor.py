@@ -58,14 +58,16 @@ def floor(scene: Scene, one: Surface) -> Floor:
     A heater holds the plane beneath the insulation at no less than its temperature; only what passes from there to the
     room is counted.
     """
-    if one.behind == "ground":
-        found = _slab(scene, one)
-    elif one.behind == "void":
-        found = _void(scene, one)
-    else:
-        found = _over_air(scene, one)
+    found = idle(scene, one)
     held = heaters(scene)
     return found if not held or one.id != "floor" else _heated(scene, one, found, held)
+
+
+def idle(scene: Scene, one: Surface) -> Floor:
+    """The same with every heater off."""
+    if one.behind == "ground":
+        return _slab(scene, one)
+    return _void(scene, one) if one.behind == "void" else _over_air(scene, one)
 
 
 def _slab(scene: Scene, one: Surface) -> Floor:
@@ -127,23 +129,13 @@ def _void(scene: Scene, one: Surface) -> Floor:
     assert site is not None and scene.weather is not None, "no void without a site"
     lies, room_c, year_c = project.faces["floor"], scene.room.temperature_c, site.ground_temperature
     edge: Number = body.perimeter if lies.exposed_edge is None else lies.exposed_edge
-    u_floor, above = _through(one)
+    u_floor, above = through(one)
     if most(edge) == 0.0:
         void_c: Number = year_c
         u = u_floor
         remark = "no edge borders the outdoors: the void stays at the ground's temperature"
     else:
-        conductivity = float(load.row("soils", lies.soil)["conductivity"])
-
-        def onwards(wall_u: float, vents: float) -> Number:
-            """From the void to ground and outdoors, W/(m²K)."""
-            whole = ground.suspended_u(
-                body.floor_area, edge, u_floor, conductivity, void_height=VOID_HEIGHT, wall_u=wall_u, vents=vents,
-                wind=site.wind, edge_wall=lies.edge_wall,
-            )  # fmt: skip
-            return 1.0 / (1.0 / whole - 1.0 / u_floor)
-
-        to_both, to_ground = onwards(VOID_WALL_U, VOID_VENTS), onwards(0.0, 0.0)
+        to_both, to_ground = void_onwards(scene, u_floor)
         outdoors = (to_both - to_ground) * scene.weather.air.temperature_c
         void_c = (u_floor * room_c + to_ground * year_c + outdoors) / (u_floor + to_both)
         u = 1.0 / (1.0 / u_floor + 1.0 / to_both)
@@ -170,9 +162,29 @@ def _void(scene: Scene, one: Surface) -> Floor:
     )
 
 
+def void_onwards(scene: Scene, floor_u: Number) -> tuple[Number, Number]:
+    """From a vented void to ground and outdoors together, and to the ground alone, W/(m²K) of floor.
+
+    floor_u: from room to void, W/(m²K). For a floor with an exposed edge.
+    """
+    body, site, lies = scene.body, scene.project.site, scene.project.faces["floor"]
+    assert site is not None, "no void without a site"
+    edge: Number = body.perimeter if lies.exposed_edge is None else lies.exposed_edge
+    conductivity = float(load.row("soils", lies.soil)["conductivity"])
+
+    def onwards(wall_u: float, vents: float) -> Number:
+        whole = ground.suspended_u(
+            body.floor_area, edge, floor_u, conductivity, void_height=VOID_HEIGHT, wall_u=wall_u, vents=vents,
+            wind=site.wind, edge_wall=lies.edge_wall,
+        )  # fmt: skip
+        return 1.0 / (1.0 / whole - 1.0 / floor_u)
+
+    return onwards(VOID_WALL_U, VOID_VENTS), onwards(0.0, 0.0)
+
+
 def _over_air(scene: Scene, one: Surface) -> Floor:
     room_c, beneath_c = scene.room.temperature_c, scene.airs[one.behind].temperature_c
-    u, above = _through(one)
+    u, above = through(one)
     mean = steady_mean(day(beneath_c))
     return Floor(
         heat_w=day(u * one.area * (beneath_c - room_c)),
@@ -190,7 +202,7 @@ def _over_air(scene: Scene, one: Surface) -> Floor:
     )
 
 
-def _through(one: Surface) -> tuple[Number, Number]:
+def through(one: Surface) -> tuple[Number, Number]:
     """U from air to air and the resistance from the room's air to beneath the insulation, both per m² inside."""
     layers = conductance(one)
     u = (layers + one.extra_w_per_k) / one.area

@@ -97,7 +97,7 @@ class Body(Record):
 
 
 class Scene(Record):
-    """Everything that computes starts from this."""
+    """Everything the account and the timeline start from."""
 
     project: Project
     body: Body

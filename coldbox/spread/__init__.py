@@ -1,4 +1,4 @@
-"""How sure an answer is: draws of every unsure input through the same account, and what they come to.
+"""How sure an answer is: draws of every unsure input through the same account and timeline, and what they come to.
 
 1. An input with a ± is normal, ± being the half-width that holds 95 of 100 cases, cut at the bounds of its field; a
    range is evenly likely. Where the file gives no ±, the factors of `[spreads]` hold, each one draw for the whole

@@ -21,7 +21,20 @@ NEVER = {
 }  # fmt: skip
 # What the computing packages have no use for until somebody asks: the page as JSON, CSV.
 LATER = {"json", "csv", "argparse", "difflib"}
-LAYERS = ("errors", "record", "units", "physics", "tables", "project", "scene", "account", "spread", "paper", "cli")
+LAYERS = (
+    "errors",
+    "record",
+    "units",
+    "physics",
+    "tables",
+    "project",
+    "scene",
+    "account",
+    "timeline",
+    "spread",
+    "paper",
+    "cli",
+)
 # Numpy itself loads some of these on some versions: what it brings is not ours to answer for.
 PROBE = """
 import sys, numpy
