@@ -40,7 +40,7 @@ def details(found: Outage, system: System) -> Iterator[Block]:
     yield Heading(text="How it was computed")
     for line in _basis(found, system):
         yield Paragraph(text=line)
-    yield from findings_blocks(found.findings, heading=True)
+    yield from findings_blocks(found.findings, system, heading=True)
     yield Heading(text="Sources")
     for number, key in enumerate(_sources(found), 1):
         yield Paragraph(text=f"[{number}] {source_words(key)}", indent=1)

@@ -80,8 +80,8 @@ def doorway_w(width: float, height: float, behind: tuple[float, float], room: tu
 def wall_ua(
     inside: float, outside: float, edges: float, thickness: float, r: float, r_in: float, r_out: float
 ) -> float:
-    """W/K: the layers on the inside area with half of each edge (0.54 of its length) and a third of each corner (0.15 of
-    the thickness), textbook conduction shape factors; each film on its own area."""
+    """W/K by textbook conduction shape factors: the layers on the inside area with half of each edge (0.54 of its
+    length) and a third of each corner (0.15 of the thickness); each film on its own area."""
     layers = inside + 0.5 * 0.54 * thickness * edges + 0.15 * thickness**2 * 4 / 3
     return 1.0 / (r_in / inside + r / layers + r_out / outside)
 
@@ -315,8 +315,8 @@ def chen(t: float, x_w: float, protein: float, t_f: float) -> float:
 
 def test_beef_that_is_frozen_in_the_freezing_room() -> None:
     # 600 kg a day of lean beef (73.1 % water, 23.2 % protein, 2.8 % fat, 1.1 % ash, freezes at -1.7 °C) from 4 to
-    # -25 °C in 20 h. Above freezing by Choi and Okos near 0 °C: water 4.177, protein 2.008, fat 1.984, ash 1.093 kJ/kgK.
-    # First hours: mean / 0.65.
+    # -25 °C in 20 h. Above freezing by Choi and Okos near 0 °C: water 4.177, protein 2.008, fat 1.984 and ash 1.093
+    # kJ/kgK. First hours: mean / 0.65.
     warm = (0.731 * 4.177 + 0.232 * 2.008 + 0.028 * 1.984 + 0.011 * 1.093) * 1000
     beef = (0.731, 0.232, -1.7)
     heat = 600 * (chen(-1.7, *beef) - chen(-25.0, *beef) + warm * 5.7)
