@@ -42,7 +42,7 @@ def details(found: Outage, system: System) -> Iterator[Block]:
     yield Heading(text="How it was computed")
     for line in _basis(found, system):
         yield Paragraph(text=line)
-    yield from findings_blocks(found.findings, heading=True)
+    yield from findings_blocks(found.findings, system, heading=True)
     yield Heading(text="Sources")
     for number, key in enumerate(_sources(found), 1):
         yield Paragraph(text=f"[{number}] {source_words(key)}", indent=1)
@@ -67,7 +67,7 @@ def _answer(found: Outage, system: System) -> Iterator[Block]:
     yield Paragraph(text=asked_words(spread_of(found), found.asked_h, verb, within=within), indent=1)
     for line in others:
         yield Paragraph(text=line, indent=1)
-    yield from told_findings(found)
+    yield from told_findings(found, system)
     yield Paragraph(text=_what(found, system))
 
 
@@ -174,15 +174,15 @@ def _beyond_at_end(limit: LimitResult) -> bool:
     return past > 0.0 if limit.side == "above" else past < 0.0
 
 
-def told_findings(found: Outage) -> Iterator[Block]:
+def told_findings(found: Outage, system: System) -> Iterator[Block]:
     """Dangers and what is not counted in full, other cautions and notes as counts."""
     own = [one for one in found.findings if not one.standing]
     for one in own:
         if one.level == "danger":
-            yield Paragraph(text=f"DANGER {one.text}", indent=1)
+            yield Paragraph(text=f"DANGER {one.words(system)}", indent=1)
     for one in own:
         if one.id == "still-warm":  # what the answer above leaves out stands beside it
-            yield Paragraph(text=one.text, indent=1)
+            yield Paragraph(text=one.words(system), indent=1)
     counts = [(level, sum(one.level == level and one.id != "still-warm" for one in own)) for level in LEVELS[1:]]
     said = ", ".join(f"{count} {level}{'s' if count > 1 else ''}" for level, count in counts if count)
     if said:

@@ -8,7 +8,7 @@ from typing import Final
 import numpy as np
 
 from coldbox.physics.number import FloatArray
-from coldbox.scene.finding import Finding
+from coldbox.scene.finding import Figure, Finding
 from coldbox.timeline.course import clock, middle
 from coldbox.timeline.outcome import HOUR_S, PPM, Outcome, first_of
 from coldbox.units import show
@@ -51,12 +51,14 @@ def _gas(found: Outcome) -> Iterator[Finding]:
         if said is not None:
             yield said
     else:
-        kilograms = show(gas.gas_kg, "mass")
         yield Finding(
             level="caution",
             id="carbon-dioxide-around",
-            text=f"{kilograms} of dry ice turns into gas where the box stands: tell the volume and the air change of"
-            " that room or cab to see how much carbon dioxide it comes to, and ventilate it",
+            text=(
+                Figure(value=gas.gas_kg, kind="mass"),
+                " of dry ice turns into gas where the box stands: tell the volume and the air change of that room or"
+                " cab to see how much carbon dioxide it comes to, and ventilate it",
+            ),
             rule="OSHA PEL 5 000 ppm",
             path="neighbours",
         )
