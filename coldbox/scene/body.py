@@ -259,7 +259,7 @@ class _Maker:
         made = one.construction
         extra: Number = 0.0
         if made is not None:
-            extra = made.edge_loss * outline + made.point_loss * (made.points * count)
+            extra = panel.bridges(made.edge_loss, outline, made.point_loss, made.points * count)
             for layer in made.layers:
                 if not isinstance(layer.edge_psi, float | int) or layer.edge_psi != 0.0:
                     extra = extra + panel.evacuated_extra(layer.edge_psi, outline)
