@@ -13,6 +13,7 @@ from coldbox.physics import doorway, moist_air
 from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Door, Ventilation
 from coldbox.scene import Air, Scene
+from coldbox.scene.about import about
 from coldbox.scene.draws import most
 from coldbox.scene.openings import (
     closed_share,
@@ -138,7 +139,8 @@ def _by_rate(scene: Scene) -> Iterator[Entry]:
 
 def _by_table(scene: Scene) -> Entry:
     use = scene.project.box.use
-    per_day = table_changes_per_day(scene.body.volume, scene.room.temperature_c, use)
+    with about(scene.project, "box.air", 'Write air = "doors", or air = "rate" with an air_change.'):
+        per_day = table_changes_per_day(scene.body.volume, scene.room.temperature_c, use)
     return _changes(
         scene,
         "air_change",
