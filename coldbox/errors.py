@@ -18,9 +18,10 @@ class OutOfValidity(ColdboxError):
         super().__init__(quantity, value)
 
     def __str__(self) -> str:
+        unit = f" {self.unit}" if self.unit else ""
         return (
-            f"{self.method} holds for {self.quantity} from {self.low:g} to {self.high:g} {self.unit};"
-            f" here it is {self.value:g} {self.unit}."
+            f"{self.method} holds for {self.quantity} from {self.low:g} to {self.high:g}{unit};"
+            f" here it is {self.value:g}{unit}."
         )
 
 

@@ -55,21 +55,21 @@ def _guidance(scene: Scene, lot: Lot) -> Iterator[Finding]:
         return
     if row("foods", lot.product).get("group") not in PERISHABLE:
         return
-    for limit in lot.limits:
-        if _above_guidance(limit):
-            yield Finding(
-                level="caution",
-                id="limit-above-guidance",
-                text=(
-                    f"{lot.name} may warm to ",
-                    _degrees(float(np.mean(limit.limit_c))),
-                    "; guidance for cold holding is ",
-                    Figure(value=COLD_HOLDING_C, kind="temperature", both=True),
-                    " or colder; your food authority decides",
-                ),
-                rule="FDA Food Code 3-501.16",
-                path=f"lots.{lot.name}.limits",
-            )
+    above = [float(np.mean(limit.limit_c)) for limit in lot.limits if _above_guidance(limit)]
+    if above:
+        yield Finding(
+            level="caution",
+            id="limit-above-guidance",
+            text=(
+                f"{lot.name} may warm to ",
+                _degrees(max(above)),
+                "; guidance for cold holding is ",
+                Figure(value=COLD_HOLDING_C, kind="temperature", both=True),
+                " or colder; your food authority decides",
+            ),
+            rule="FDA Food Code 3-501.16",
+            path=f"lots.{lot.name}.limits",
+        )
 
 
 def _degrees(value_c: float) -> Figure:

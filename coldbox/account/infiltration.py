@@ -10,10 +10,10 @@ from coldbox.account.air_exchange import denser_volume, entry, exchange
 from coldbox.account.entry import Entry, Input
 from coldbox.account.shapes import SECONDS_A_DAY, SECONDS_AN_HOUR, called, day, over_hours, steady_mean
 from coldbox.physics import doorway, moist_air
-from coldbox.physics.number import FloatArray
+from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Door, Ventilation
 from coldbox.scene import Air, Scene
-from coldbox.scene.air import from_humidity_ratio
+from coldbox.scene.about import about
 from coldbox.scene.draws import most
 from coldbox.scene.openings import (
     closed_share,
@@ -108,7 +108,7 @@ def _leakage(scene: Scene) -> Iterator[Entry]:
         "leakage",
         "leakage, all doors shut",
         name,
-        day(rate * scene.body.volume * closed),
+        day(rate * closed),
         ("leakage rate", "as-given"),
         (
             Input(key="changes_per_h", label="air changes an hour", value=rate * SECONDS_AN_HOUR, kind="number"),
@@ -128,7 +128,7 @@ def _by_rate(scene: Scene) -> Iterator[Entry]:
         "air_change",
         "air change, as given",
         name,
-        day(change.per_second * scene.body.volume),
+        day(change.per_second),
         ("air-change rate", "as-given"),
         (
             Input(key="changes_per_day", label="changes a day", value=change.per_second * SECONDS_A_DAY, kind="number"),
@@ -139,13 +139,14 @@ def _by_rate(scene: Scene) -> Iterator[Entry]:
 
 def _by_table(scene: Scene) -> Entry:
     use = scene.project.box.use
-    per_day = table_changes_per_day(scene.body.volume, scene.room.temperature_c, use)
+    with about(scene.project, "box.air", 'Write air = "doors", or air = "rate" with an air_change.'):
+        per_day = table_changes_per_day(scene.body.volume, scene.room.temperature_c, use)
     return _changes(
         scene,
         "air_change",
         f"air changes by volume, {use} use",
         leak_neighbour(scene),
-        day(per_day * scene.body.volume / SECONDS_A_DAY),
+        day(per_day / SECONDS_A_DAY),
         ("air-change table", "ashrae-r-loads"),
         (
             Input(key="changes_per_day", label="changes a day", value=per_day, kind="number"),
@@ -159,15 +160,20 @@ def _changes(
     name: str,
     label: str,
     neighbour: str,
-    flow: FloatArray,
+    changes: FloatArray,
     how: tuple[str, str],
     inputs: tuple[Input, ...],
 ) -> Entry:
-    behind = _air_of(scene, neighbour)
+    """An entry of air changes, 1/s in each hour, of the air behind a neighbour."""
+    behind, room = _air_of(scene, neighbour), scene.room
     method, source = how
+    brought = doorway.air_change_heat(
+        scene.body.volume, changes, room.specific_volume, behind.temperature_c, behind.humidity_ratio,
+        room.temperature_c, room.humidity_ratio,
+    )  # fmt: skip
     return entry(
         behind,
-        exchange(scene, behind, flow, scene.room.specific_volume),
+        brought,
         name=name,
         label=label,
         how=(method, source, "changes x volume, times the difference of the airs"),
@@ -177,14 +183,19 @@ def _changes(
 
 
 def _ventilation(scene: Scene, fresh: Ventilation) -> Entry:
-    behind = _air_of(scene, fresh.neighbour)
+    behind, room = _air_of(scene, fresh.neighbour), scene.room
+    dried: Number | None = None
     if fresh.dried_to is not None:
-        dried = np.minimum(behind.humidity_ratio, moist_air.saturation_humidity_ratio(fresh.dried_to, scene.pressure))
-        behind = from_humidity_ratio(behind.temperature_c, dried, scene.pressure)
-    flow = day(fresh.flow * fresh.hours.shares() * (1.0 - fresh.recovery))
+        dried = moist_air.saturation_humidity_ratio(fresh.dried_to, scene.pressure)
+    brought = doorway.ventilation_heat(
+        day(fresh.flow * fresh.hours.shares()), behind.specific_volume, behind.temperature_c, behind.humidity_ratio,
+        room.temperature_c, room.humidity_ratio, fresh.recovery, dried,
+    )  # fmt: skip
+    if dried is not None:
+        behind = behind.replace(humidity_ratio=np.minimum(behind.humidity_ratio, dried))
     return entry(
         behind,
-        exchange(scene, behind, flow, behind.specific_volume),
+        brought,
         name=f"ventilation.{fresh.name}",
         label=called("fresh air", fresh.name),
         how=("ventilation", "ashrae-f-psychrometrics", "rho V (h_outside - h_room) x (1 - recovery)"),

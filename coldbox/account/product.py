@@ -13,11 +13,16 @@ from coldbox.physics.number import FloatArray, Number
 from coldbox.physics.validity import within
 from coldbox.project.model import Lot
 from coldbox.scene import Scene
+from coldbox.scene.about import about
 from coldbox.scene.draws import matters, most
 from coldbox.scene.goods import Goods, goods
 from coldbox.tables.load import row
 
 PARTS_OF_AN_HOUR = 4  # steps within the hour in which a falling temperature is followed
+_HEAT_KEPT = "Keep it within that range, or give the lot a product or figures that hold there."
+_HEAT_OF_IT = "Bring it in within that range, or give the lot a product or figures that hold there."
+_BREATH_AT_REST = "Keep it within that range, or give the lot its own respiration at temperatures nearer to it."
+_BREATH_OF_IT = "Bring it in cooler, or give the lot's own respiration at temperatures nearer to it."
 EVAPORATION_J_PER_KG = 2.5e6  # heat of evaporation near 0 °C, moist-air tables
 
 
@@ -79,7 +84,10 @@ def _pulldown_shares(lot: Lot) -> FloatArray:
 def _intake(scene: Scene, lot: Lot, kind: Goods, shares: FloatArray, enthalpy: Number) -> Entry:
     room = scene.room.temperature_c
     warm = _arrival_temperature(lot)
-    per_kg = enthalpy * (kind.enthalpy(warm) - kind.enthalpy(room))
+    with about(scene.project, f"lots.{lot.name}.arrival_temperature", _HEAT_OF_IT):
+        arriving = kind.enthalpy(warm)
+    with about(scene.project, "box.temperature", f'It is asked for the lot "{lot.name}". {_HEAT_KEPT}'):
+        per_kg = enthalpy * (arriving - kind.enthalpy(room))
     daily = lot.arrives * SECONDS_A_DAY * per_kg
     return Entry(
         id=f"lots.{lot.name}.intake",
@@ -133,7 +141,8 @@ def _packaging(scene: Scene, lot: Lot, shares: FloatArray) -> Entry:
 
 def _respiration(scene: Scene, lot: Lot, kind: Goods) -> Entry | None:
     room = scene.room.temperature_c
-    resting = kind.respiration_w_per_kg(room)
+    with about(scene.project, "box.temperature", f'It is asked for the lot "{lot.name}". {_BREATH_AT_REST}'):
+        resting = kind.respiration_w_per_kg(room)
     watts = day(lot.stored * resting)
     inputs = [
         Input(key="stored_kg", label="m stored", value=lot.stored, kind="mass"),
@@ -141,7 +150,8 @@ def _respiration(scene: Scene, lot: Lot, kind: Goods) -> Entry | None:
         Input(key="heat_w_per_kg", label="w(t_room)", value=resting, kind="specific_power"),
     ]
     if most(lot.arrives) > 0:
-        cooling = _respiration_while_cooling(lot, kind, room)
+        with about(scene.project, f"lots.{lot.name}.arrival_temperature", _BREATH_OF_IT):
+            cooling = _respiration_while_cooling(lot, kind, room)
         watts = watts + cooling
         inputs.append(Input(key="cooling_w", label="today's intake, mean", value=steady_mean(cooling), kind="power"))
     if not matters(watts):

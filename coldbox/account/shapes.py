@@ -4,21 +4,15 @@ from __future__ import annotations
 
 import numpy as np
 
-from coldbox.physics.number import FloatArray, Number
+from coldbox.physics.number import FloatArray
 from coldbox.scene.hours import HOURS_A_DAY, SECONDS_A_DAY, SECONDS_AN_HOUR, day, over_hours, steady_mean
 
 __all__ = [
-    "HOURS_A_DAY", "NOTHING", "SECONDS_AN_HOUR", "SECONDS_A_DAY", "called", "daily_mean", "day", "over_hours",
+    "HOURS_A_DAY", "NOTHING", "SECONDS_AN_HOUR", "SECONDS_A_DAY", "called", "day", "over_hours",
     "steady_mean",
 ]  # fmt: skip
 
 NOTHING: FloatArray = np.zeros(24)
-
-
-def daily_mean(hours: FloatArray) -> Number:
-    """Mean over the day, a float or (draws,)."""
-    mean = hours.mean(axis=-1)
-    return float(mean) if mean.ndim == 0 else mean
 
 
 def called(kind: str, name: str) -> str:

@@ -6,6 +6,7 @@ from collections.abc import Mapping
 
 from coldbox.account.outdoors import Outdoors
 from coldbox.account.shapes import day
+from coldbox.physics import surface
 from coldbox.physics.number import FloatArray, Number
 from coldbox.record import Record
 from coldbox.scene import Scene
@@ -43,10 +44,9 @@ def surface_fact(scene: Scene, one: Surface, solved: Outdoors | None, places: Ma
             dew_point_c=solved.steady(solved.dew_point_c, place),
             bridged=bridged,
         )
-    # Steady: the surface lies below the air by what the film takes of the whole difference.
-    air = scene.airs[one.behind]
-    film = bodies.conductance(one) * one.outside_film / one.outside_area
-    surface_c = day(air.temperature_c - film * (air.temperature_c - scene.room.temperature_c))
+    air, film = scene.airs[one.behind], one.outside_film
+    rest = one.outside_area / bodies.conductance(one) - film
+    surface_c = day(surface.steady_surface(air.temperature_c, scene.room.temperature_c, rest, film))
     over = surface_c - air.dew_point_c
     nearest = int(over.reshape(-1, 24).mean(axis=0).argmin())
     return SurfaceFact(

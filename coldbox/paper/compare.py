@@ -44,7 +44,6 @@ def _blocks(heads: list[str], loads: list[Load], system: System) -> Iterator[Blo
 
 
 def _result_rows(loads: list[Load], system: System) -> Iterator[tuple[str, ...]]:
-    first = loads[0]
     for label, name, kind in RESULTS:
         values = [float(np.mean(getattr(load, name))) for load in loads]
         yield (label, *(_held_against(value, values[0], kind, system) for value in values))
@@ -54,7 +53,7 @@ def _result_rows(loads: list[Load], system: System) -> Iterator[tuple[str, ...]]
         if any(sums):
             texts = [_held_against(value * 3600.0, sums[0] * 3600.0, "energy", system) for value in sums]
             yield (f"{GROUP_WORDS[group]}, a day", *texts)
-    yield ("peak hour", *(str(load.peak_hour) for load in [first, *loads[1:]]))
+    yield ("peak hour", *(f"{load.peak_hour}-{load.peak_hour + 1}" for load in loads))
 
 
 def _held_against(value: float, first: float, kind: str, system: System) -> str:

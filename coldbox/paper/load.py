@@ -63,6 +63,9 @@ def _answer(load: Load, system: System) -> Iterator[Block]:
         return figure(value, "power", system, 3)
 
     room = figure(project.box.temperature, "temperature", system)
+    if not project.box.powered:
+        yield from _uncooled(load, system, f"{project.name}, {room}: ")
+        return
     yield Heading(text=f"{project.name}, {room}: needs {power(load.required_capacity_w)} of refrigeration", level=1)
     margin = f"+ {figure(load.safety, 'share', system)}"
     mark = {load.governs: "<- governs"}
@@ -95,6 +98,21 @@ def _answer(load: Load, system: System) -> Iterator[Block]:
         ),
         rows=tuple(rows),
     )
+    yield from _in_short(load)
+
+
+def _uncooled(load: Load, system: System, head: str) -> Iterator[Block]:
+    """The answer for a box without a machine: what its goods and packs have to take up."""
+    daily = figure(load.counted_daily_j, "energy", system)
+    mean = figure(load.counted_daily_j / 86400.0, "power", system, 3)
+    yield Heading(text=f"{head}{mean} come in, {daily} a day", level=1)
+    most = f"most in the hour {_hour(load.peak_hour)}: {figure(load.peak_w, 'power', system, 3)}"
+    yield Paragraph(text=f"no machine cools it: goods and packs take this up; {most}", indent=1)
+    yield from _in_short(load)
+
+
+def _in_short(load: Load) -> Iterator[Block]:
+    """The biggest groups, and how many findings of this box stand below."""
     yield Paragraph(text=f"biggest: {_biggest(load)}", indent=1)
     counts = [(level, sum(f.level == level and not f.standing for f in load.findings)) for level in LEVELS]
     told = ", ".join(f"{count} {level}{'s' if count > 1 else ''}" for level, count in counts if count)
@@ -179,7 +197,7 @@ def _day(load: Load, system: System) -> Bars:
 def _after(load: Load, system: System) -> Iterator[str]:
     frost = float(np.mean(load.frost_kg_per_day))
     parts = []
-    if frost > 0.005:
+    if frost > 0.005 and load.project.box.powered:
         parts.append(f"Frost on the coil {figure(frost, 'mass', system, 3)} a day.")
     parts.append(f"UA {figure(load.ua_w_per_k, 'point_transmittance', system, 3)}.")
     parts.append(f"K {figure(load.k_w_per_m2k, 'transmittance', system, 3)} on the mean of inside and outside area.")
@@ -187,7 +205,7 @@ def _after(load: Load, system: System) -> Iterator[str]:
     if float(np.mean(load.cold_w)) > 0.5:
         taken = "counted" if load.project.box.credit_cold else "not counted in the capacity (credit_cold)"
         yield (
-            f"Colder neighbours and night sky take off {figure(load.cold_w, 'power', system)} on average, {taken};"
+            f"Colder neighbours and night sky take off {figure(load.cold_w, 'power', system, 3)} on average, {taken};"
             f" all entries together make {figure(load.daily_heat_j, 'energy', system)} a day."
         )
     used = len(defaults_used(load.project, for_load=True))

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import textwrap
 from collections.abc import Iterator
 
@@ -10,6 +11,8 @@ from coldbox.paper.document import Bars, Block, Curve, Document, Heading, Paragr
 STEPS = "▁▂▃▄▅▆▇█"
 ASCII_STEPS = "_.-=+*%#"
 GAP = "  "
+UNIT_BEHIND = r"(?<=\d) (?=(?:%|°C|°F|[kM]?W|kWh|Btu|kg|g|lb|mm|m|m²|m³|ft|min|h|K|ppm)(?:[^\w]|$))"
+NO_BREAK = "\N{NO-BREAK SPACE}"
 NARROWEST = 8  # a column that gives way keeps this much
 
 
@@ -27,9 +30,9 @@ def _block(block: Block, width: int, ascii_only: bool) -> list[str]:
             return ([] if block.level == 1 else [""]) + textwrap.wrap(block.text, width)
         case Paragraph():
             first = "  " * block.indent
-            return textwrap.wrap(
-                block.text, width, initial_indent=first, subsequent_indent=first + "  " * min(block.indent, 1)
-            )
+            later = first + "  " * min(block.indent, 1)
+            lines = textwrap.wrap(_bound(block.text), width, initial_indent=first, subsequent_indent=later)
+            return [line.replace(NO_BREAK, " ") for line in lines]
         case Table():
             return _table(block, width)
         case Bars():
@@ -38,6 +41,11 @@ def _block(block: Block, width: int, ascii_only: bool) -> list[str]:
             from coldbox.paper import curve
 
             return curve.drawn(block, width, ascii_only=ascii_only)
+
+
+def _bound(text: str) -> str:
+    """Text in which a figure and the unit behind it stay on one line."""
+    return re.sub(UNIT_BEHIND, NO_BREAK, text)
 
 
 def _table(table: Table, width: int) -> list[str]:
@@ -73,7 +81,17 @@ def _table_lines(table: Table, rows: list[tuple[str, ...]], widths: list[int]) -
 def _cell_lines(cell: str, size: int) -> list[str]:
     if len(cell) <= size:
         return [cell]
+    room = size - 1 if size > NARROWEST else size
+    cell = " ".join(part for word in cell.split(" ") for part in _at_dots(word, room))
     return textwrap.wrap(cell, size, subsequent_indent=" " if size > NARROWEST else "", break_on_hyphens=False) or [""]
+
+
+def _at_dots(word: str, room: int) -> Iterator[str]:
+    """A word in pieces of at most `room`, cut before a dot where there is one: a key path stays readable."""
+    while len(word) > room and (dot := word.rfind(".", 1, room + 1)) > 0:
+        yield word[:dot]
+        word = word[dot:]
+    yield word
 
 
 def _bars(bars: Bars, width: int, ascii_only: bool) -> list[str]:

@@ -141,33 +141,6 @@ def exchange_heat(
     )
 
 
-def doorway_heat(
-    width: Number,
-    height: Number,
-    share: Number,
-    air_c: Number,
-    air_humidity_ratio: Number,
-    air_specific_volume: Number,
-    room_c: Number,
-    room_humidity_ratio: Number,
-    room_specific_volume: Number,
-) -> Exchange:
-    """Heat and water through a door that is open for a share of the time.
-
-    `exchange_heat` of share · V, V of `doorway_flow` with ρ = (1 + W) / v, taken at v of the denser side
-
-    width, height: of the opening, m. share: open-time share x flow factor x what protection lets through. air_…: °C,
-    kg/kg, m³ per kg dry air, of the air behind the door; room_…: of the room. All broadcast; so does the Exchange.
-    An upper bound where the room's air is spent before the door closes. Raises OutOfValidity as its parts.
-    Source: as `doorway_flow` and `exchange_heat`.
-    """
-    inside = (1.0 + room_humidity_ratio) / room_specific_volume
-    outside = (1.0 + air_humidity_ratio) / air_specific_volume
-    volume = np.where(np.asarray(inside) >= outside, room_specific_volume, air_specific_volume)
-    flow = share * doorway_flow(width, height, inside, outside)
-    return exchange_heat(flow, volume, air_c, air_humidity_ratio, room_c, room_humidity_ratio)
-
-
 def air_change_heat(
     volume: Number,
     changes: Number,

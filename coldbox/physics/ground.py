@@ -85,29 +85,6 @@ def _bare_u(size: Number, thickness: Number, soil_conductivity: Number) -> Numbe
     return 2.0 * soil_conductivity / (arc + thickness) * np.log(arc / thickness + 1.0)
 
 
-def edge_insulation(
-    equivalent_thickness: Number, soil_conductivity: Number, reach: Number, resistance: Number, thickness: Number,
-    *, vertical: bool,
-) -> Number:  # fmt: skip
-    """What a strip of insulation along the edge of a slab changes, W/(m·K) of exposed edge: zero or negative.
-
-    ψ = -λ/π · (ln(D/d_t + 1) - ln(D/(d_t + d') + 1)), d' = λ R - d; D the width of a flat strip, twice the depth of an
-    upright one. The slab then conducts U + 2 ψ / B'.
-
-    equivalent_thickness: d_t, m. soil_conductivity: λ, W/(m·K). reach: width or depth of the strip, m. resistance: R of
-    the strip, m²K/W. thickness: d of the strip, m. vertical: whether it stands upright. All but the last broadcast.
-    Valid while R is at least that of the ground it replaces, else OutOfValidity.
-    Source: ISO 13370, annex on edge insulation (from memory).
-    >>> round(float(edge_insulation(0.615, 1.5, 1.0, 2.0, 0.05, vertical=False)), 3)
-    -0.343
-    """
-    extra = soil_conductivity * resistance - thickness
-    within(extra, 0.0, 1e4, quantity="the strip's thickness in ground beyond its own", unit="m", method=_METHOD)
-    width = 2.0 * reach if vertical else reach
-    ratio = np.log(width / equivalent_thickness + 1.0) - np.log(width / (equivalent_thickness + extra) + 1.0)
-    return -soil_conductivity / math.pi * ratio
-
-
 def suspended_u(
     area: Number,
     exposed_edge: Number,

@@ -179,24 +179,6 @@ def conductance(
     return 1.0 / (inside_film / area + resistance / effective_area + outside_film / outside_area)
 
 
-def evacuated_conductivity(
-    core: Number, edge_psi: Number, thickness: Number, panel_length: Number, panel_width: Number
-) -> Number:
-    """Conductivity of an evacuated panel with the heat that creeps around it along its envelope, W/(m·K).
-
-    λ = λ_core + ψ d · 2 (l + w) / (l w)
-
-    core: λ of the middle, W/(m·K). edge_psi: ψ of one edge of one panel, W/(m·K). thickness: d, m. panel_length,
-    panel_width: of one panel, m, above zero, else OutOfValidity. All broadcast.
-    Source: EN 17140, annex on the edge effect (from memory).
-    >>> round(evacuated_conductivity(0.0042, 0.01, 0.02, 1.0, 0.5), 5)
-    0.0054
-    """
-    for side in (panel_length, panel_width):
-        within(side, 1e-3, 100.0, quantity="a side of an evacuated panel", unit="m", method="The edge effect")
-    return core + edge_psi * thickness * 2.0 * (panel_length + panel_width) / (panel_length * panel_width)
-
-
 def evacuated_extra(edge_psi: Number, outline: Number) -> Number:
     """What creeps around evacuated panels along their envelopes, beside what their middles let pass, W/K.
 

@@ -13,6 +13,7 @@ from coldbox.physics.panel import Direction
 from coldbox.physics.surface import Facing
 from coldbox.project.model import FACES, WALLS, Construction, Door, Face, Panel, Project
 from coldbox.scene import constructions, weather
+from coldbox.scene.about import about
 from coldbox.scene.constructions import Mask
 from coldbox.scene.draws import least
 from coldbox.scene.sizes import Sizes, sizes
@@ -161,7 +162,8 @@ class _Maker:
             layers = self.layers(made, face, on.neighbour)
         resistance = constructions.total_resistance(layers)
         if self.project.box.films == "natural":
-            inside_film, outside_film = self.natural(face, on, inwards, resistance, outside_film)
+            with about(self.project, "box.films", _too_large(face)):
+                inside_film, outside_film = self.natural(face, on, inwards, resistance, outside_film)
         surface_ = Surface(
             id=id, label=_label(name, role, on.neighbour), face=face, role=role, construction=made,
             sheets=layers, resistance=resistance, thickness=thickness, area=area, effective_area=effective,
@@ -259,7 +261,7 @@ class _Maker:
         made = one.construction
         extra: Number = 0.0
         if made is not None:
-            extra = made.edge_loss * outline + made.point_loss * (made.points * count)
+            extra = panel.bridges(made.edge_loss, outline, made.point_loss, made.points * count)
             for layer in made.layers:
                 if not isinstance(layer.edge_psi, float | int) or layer.edge_psi != 0.0:
                     extra = extra + panel.evacuated_extra(layer.edge_psi, outline)
@@ -281,9 +283,13 @@ def _absorptance(on: Face | Panel | Door) -> float:
     return float(row["weathered_absorptance" if on.weathered else "absorptance"])
 
 
+def _too_large(face: str) -> str:
+    return f'The {face} is too large, or its two sides too far apart, for this method. Write films = "standard".'
+
+
 def _label(name: str, role: str, neighbour: str) -> str:
     if role == "door":
-        return f"{name}, leaf" if name.endswith("door") else f"{name} door, leaf"
+        return f"{name}, leaf" if "door" in name else f"{name} door, leaf"
     if role == "panel" or neighbour == "outdoors":
         return name
     if neighbour == "ground":

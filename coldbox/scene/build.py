@@ -6,10 +6,13 @@ from coldbox.physics import moist_air
 from coldbox.physics.number import Number
 from coldbox.project.model import Project
 from coldbox.scene import air
+from coldbox.scene.about import about
 from coldbox.scene.bearing import worst_bearing
 from coldbox.scene.body import body, turned
 from coldbox.scene.types import Air, Scene
 from coldbox.scene.weather import weather
+
+_DRIER = 'Write drier or wetter air for the hottest hour, or sky = "overcast", which needs no dew point.'
 
 
 def build(project: Project) -> Scene:
@@ -20,7 +23,8 @@ def build(project: Project) -> Scene:
     without a bearing faces the worst of 16: its surfaces carry that azimuth.
     """
     pressure: Number = moist_air.pressure_at_altitude(0.0 if project.site is None else project.site.altitude)
-    outdoors = None if project.site is None else weather(project.site, pressure)
+    with about(project, ("site.humidity", "site.wet_bulb", "site.place"), _DRIER, quantity="the dew point"):
+        outdoors = None if project.site is None else weather(project.site, pressure)
     envelope = body(project)
     airs: dict[str, Air] = {
         name: air.state(room.temperature, room.humidity, pressure) for name, room in project.neighbours.items()

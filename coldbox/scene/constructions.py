@@ -68,7 +68,7 @@ def sheets(
         passed: Number = OUTSIDE_FILM
         again = []
         for layer, resistance in zip(layers, found, strict=True):
-            at = behind_c - difference * (passed + 0.5 * resistance) / total
+            at = panel.temperature_inside_wall(behind_c, inside_c, passed + 0.5 * resistance, total)
             again.append(_resistance(layer, face, at, difference * resistance / total, inwards))
             passed = passed + resistance
         found = again

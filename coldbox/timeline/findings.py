@@ -111,9 +111,9 @@ def _spoiling(found: Outcome) -> Iterator[Finding]:
         yield Finding(
             level="caution",
             id="food-guidance",
-            text=f"{one.body.label} has been above 4 °C (40 °F) at its surface for two hours by {found.clock(at)}: the"
-            " guidance for power cuts is to discard it then; refreeze only what is still at or below that or has ice"
-            " crystals. When in doubt throw it out; your food authority decides",
+            text=f"{one.body.label} will have been above 4 °C (40 °F) at its surface for two hours by"
+            f" {found.clock(at)}: the guidance for power cuts is to discard it then; refreeze only what is still at or"
+            " below that or has ice crystals. When in doubt throw it out; your food authority decides",
             rule="USDA FSIS and FDA, food safety in a power outage",
             path=f"lots.{one.body.lot.name}",
         )

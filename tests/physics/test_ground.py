@@ -98,32 +98,6 @@ def test_the_branches_meet(soil, size):
     assert bare == pytest.approx(insulated, rel=0.01)
 
 
-@pytest.mark.parametrize("width", [0.5, 1.0])
-@pytest.mark.parametrize("floor", [0.2, 1.0])
-def test_an_edge_strip_against_two_dimensions(floor, width):
-    """A flat strip under the edge of a slab 12 m wide: from 60 to 120 % of what it saves there.
-
-    The standard means it for bare slabs, and under-rates it where the slab is insulated all over.
-    """
-    soil, strip, half, wall = 2.0, 1.5, 6.0, 0.3
-    place = {"conductivity": soil, "wall": wall, "outside_film": 0.04, "far": 300.0}
-    *_, without = solve([half], floor, **place)
-    *_, within = solve([half], lambda x: floor + np.where(x > half - width, strip, 0.0), **place)
-    thick = wall + soil * (floor + 0.04)
-    ours = ground.edge_insulation(thick, soil, width, strip, 0.0, vertical=False)
-    assert 0.6 < ours / ((within - without) * half) < 1.2
-
-
-def test_edge_strips():
-    flat = ground.edge_insulation(0.8, 2.0, 1.0, 2.0, 0.06, vertical=False)
-    upright = ground.edge_insulation(0.8, 2.0, 0.5, 2.0, 0.06, vertical=True)
-    assert flat == pytest.approx(upright)
-    assert flat < 0.0
-    assert ground.edge_insulation(0.8, 2.0, 1.0, 0.03, 0.06, vertical=False) == pytest.approx(0.0)
-    widths = ground.edge_insulation(0.8, 2.0, np.linspace(0.2, 3.0, 20), 2.0, 0.06, vertical=False)
-    assert (np.diff(widths) < 0.0).all()
-
-
 def test_suspended_floors():
     given_floor = {"void_height": 0.4, "wall_u": 1.5, "vents": 0.0015, "wind": 4.0}
     u = ground.suspended_u(80.0, 36.0, 0.3, 1.5, **given_floor)
@@ -206,7 +180,6 @@ def test_draws_and_months_broadcast():
         lambda: ground.characteristic_dimension(100.0, 0.0),
         lambda: ground.slab_u(100.0, np.array([40.0, 0.0]), 3.0, 1.5),
         lambda: ground.slab_u(100.0, 40.0, 0.0, 1.5),
-        lambda: ground.edge_insulation(0.8, 2.0, 1.0, 0.01, 0.06, vertical=False),
         lambda: ground.below_slab_centre(-20.0, 10.0, 0.0, 5.0, 2.0),
         lambda: ground.held_floor(100.0, 0.2, 5.0, -20.0, 4.0, 300.0),
         lambda: ground.penetration_depth(2.0, 0.0),

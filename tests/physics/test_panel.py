@@ -101,10 +101,10 @@ def test_foam_multipliers():
 
 
 def test_evacuated_panels_creep_around_their_edges():
-    """The added conductivity of a panel is what its own outline adds to its conductance."""
+    """EN 17140 gives a panel λ_core + ψ d 2 (l + w) / (l w) for it: what its own outline adds to its conductance."""
     core, psi, thickness, length, width = 0.0042, 0.008, 0.025, 1.0, 0.6
     area = length * width
-    by_conductivity = panel.evacuated_conductivity(core, psi, thickness, length, width) / thickness * area
+    by_conductivity = (core + psi * thickness * 2.0 * (length + width) / area) / thickness * area
     by_outline = core / thickness * area + panel.evacuated_extra(psi, 2.0 * (length + width))
     assert by_conductivity == pytest.approx(by_outline, rel=1e-12)
     assert panel.bridges(0.02, 10.0, 0.1, 3.0) == pytest.approx(0.5)
@@ -128,7 +128,6 @@ def test_draws_and_hours_broadcast():
         lambda: panel.outside_film(np.array([1.0, np.nan])),
         lambda: panel.airspace_resistance(0.4, "up", 0.8),
         lambda: panel.airspace_resistance(np.array([0.01, 0.0]), "up", 0.8),
-        lambda: panel.evacuated_conductivity(0.004, 0.01, 0.02, 0.0, 0.5),
         lambda: panel.temperature_inside_wall(0.0, 1.0, 1.0, 0.0),
     ],
 )
