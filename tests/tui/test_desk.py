@@ -13,6 +13,7 @@ from hypothesis import strategies as st
 from coldbox.errors import ColdboxError
 from coldbox.project import fresh, journal, store
 from coldbox.project.fields import FIELDS
+from coldbox.project.origins import declaration
 from coldbox.tui import document as documents
 from coldbox.tui import sheet, things
 from coldbox.tui.desk import Desk, Refusal, Understood
@@ -177,7 +178,9 @@ def test_a_face_is_written_when_it_says_something_and_goes_when_it_does_not(tmp_
     ],
 )
 def test_steps(path: str, text: str, steps: int, expected: str) -> None:
-    assert stepped(path, text, steps, "SI") == expected
+    field = declaration(path)
+    assert field is not None
+    assert stepped(field, text, steps, "SI", field.choices) == expected
 
 
 # Saving beside others
