@@ -48,6 +48,7 @@ class ColdboxApp(App[int]):
         self.shell = shell
         self.surface = Surface(Look(shell.theme))
         self.fault: BaseException | None = None
+        self._paint_asked = False
         self._looking: Timer | None = None
         self._journal: Timer | None = None
 
@@ -66,7 +67,7 @@ class ColdboxApp(App[int]):
         """Keys and pasted text go straight to the shell; all else goes its usual way."""
         if isinstance(event, events.Key):
             self.shell.key(event.key, event.character)
-            self._after()
+            self._after(letter=event.is_printable and self.shell.top.typing)
         elif isinstance(event, events.Paste):
             self.shell.paste(event.text)
             self._after()
@@ -87,14 +88,23 @@ class ColdboxApp(App[int]):
             self.cursor_position = self.cursor_position.__class__(*frame.cursor)
         self.surface.show(frame)
 
-    def _after(self) -> None:
-        """What follows a key: a picture, the clipboard, timers, the end."""
+    def _paint_once(self) -> None:
+        self._paint_asked = False
+        if self.shell.exit_code is None:
+            self._paint(*self.size)
+
+    def _after(self, *, letter: bool = False) -> None:
+        """What follows a key: a picture, the clipboard, timers, the end. letter: it went into a text."""
         shell = self.shell
         if shell.exit_code is not None:
             shell.close_down()
             self.exit(return_code=shell.exit_code)
             return
-        self._paint(*self.size)
+        if not letter:  # the next key may depend on where things were drawn
+            self._paint(*self.size)
+        elif not self._paint_asked:
+            self._paint_asked = True
+            self.call_later(self._paint_once)  # after the letters that wait already: a burst of them is one picture
         if shell.clipboard:
             self.copy_to_clipboard(shell.clipboard)
             shell.clipboard = ""
@@ -105,10 +115,6 @@ class ColdboxApp(App[int]):
             if self._journal is not None:
                 self._journal.stop()
             self._journal = self.set_timer(JOURNAL_SECONDS, shell.write_journal)
-
-    def start_looking(self) -> None:
-        """Begin to ask for work that was started before the first key."""
-        self._after()
 
     def _look(self) -> None:
         if self.shell.tick():

@@ -49,13 +49,14 @@ class Frame:
             shown = [*shown[: end - x - 1], mark]
             if len(shown) > 1 and unicodedata.east_asian_width(shown[-2][:1] or "a") in "WF":
                 shown[-2] = " "
-        for cell in shown:
-            if x >= end:
-                break
-            if x >= 0:
-                characters[x], styles[x] = cell, style
-            x += 1
-        return x
+        skip = max(-x, 0)  # what lies left of the screen
+        shown = shown[skip : max(end - x, 0)]
+        x += skip
+        if shown:
+            shown = shown if shown[0] else (" ", *shown[1:])  # half of a wide character
+            characters[x : x + len(shown)] = shown
+            styles[x : x + len(shown)] = [style] * len(shown)
+        return x + len(shown)
 
     def right(self, x: int, y: int, text: str, style: str = "text") -> int:
         """Write a text so that it ends before column x; the column it begins in."""

@@ -48,8 +48,8 @@ _EVERYWHERE: Final = (
     ("remove", "remove", "minus", "delete"),
 )
 _ELSEWHERE: Final = (
-    Action("raise", "sheet", "a step up", ("right_square_bracket", "plus")),
-    Action("lower", "sheet", "a step down", ("left_square_bracket", "minus")),
+    Action("raise", "sheet", "a step up", ("right_square_bracket",)),
+    Action("lower", "sheet", "a step down", ("left_square_bracket",)),
     Action("default", "sheet", "back to the default", ("backspace",)),
     Action("earlier", "outage", "power off an hour earlier", ("less_than_sign", "comma")),
     Action("later", "outage", "power off an hour later", ("greater_than_sign", "full_stop")),

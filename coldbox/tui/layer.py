@@ -69,6 +69,9 @@ class Layer:
         """The keys that matter most here, for the last line."""
         return ""
 
+    def stand_on(self, path: str) -> None:
+        """Put the cursor on a thing of the project, where there is one for it."""
+
     def targets(self) -> list[Target]:
         """The places on the screen that can be jumped to, as drawn last."""
         return []

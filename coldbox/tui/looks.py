@@ -4,8 +4,6 @@ from __future__ import annotations
 
 from rich.style import Style
 
-THEMES = ("terminal", "dark", "light", "plain")
-
 _DARK = {
     "text": "color(252) on color(234)",
     "dim": "color(245) on color(234)",
@@ -129,3 +127,8 @@ class Look:
         if made is None:
             made = self._made[name] = Style.parse(self._specs.get(name, self._specs["text"]))
         return made
+
+
+def known(theme: str) -> frozenset[str]:
+    """The names of the styles that a theme has."""
+    return frozenset(_SPECS[theme])

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import unicodedata
+from collections.abc import Sequence
 from functools import lru_cache
 
 _LINES = {
@@ -50,10 +51,13 @@ _LETTERS = {
 _BRAILLE = (0x2800, 0x28FF)
 
 
-def cells(text: str, *, ascii_drawing: bool = False, ascii_letters: bool = False) -> list[str]:
+def cells(text: str, *, ascii_drawing: bool = False, ascii_letters: bool = False) -> Sequence[str]:
     """One string a cell; after a wide character an empty one; marks that combine stay with their letter."""
-    if text.isascii() and text.isprintable():
-        return list(text)
+    return text if text.isascii() and text.isprintable() else _cells(text, ascii_drawing, ascii_letters)
+
+
+@lru_cache(4096)
+def _cells(text: str, ascii_drawing: bool, ascii_letters: bool) -> tuple[str, ...]:
     made: list[str] = []
     for character in text:
         if character.isascii() and character.isprintable():
@@ -67,7 +71,7 @@ def cells(text: str, *, ascii_drawing: bool = False, ascii_letters: bool = False
         made.extend(shown)
         if len(shown) == 1 and unicodedata.east_asian_width(shown) in "WF":
             made.append("")
-    return made
+    return tuple(made)
 
 
 @lru_cache(1024)

@@ -14,8 +14,7 @@ from coldbox.tui.desk import Desk
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.keymap import PAGES
 from coldbox.tui.layer import Area, Layer
-from coldbox.tui.looks import THEMES
-from coldbox.tui.settings import Settings, load_settings
+from coldbox.tui.settings import THEMES, Settings, load_settings
 from coldbox.tui.things import LISTS, Thing, thing, things
 
 BEGIN_NO_VALUE = ("help", "palette")  # their usual keys, ? and :, begin no value
@@ -58,6 +57,7 @@ class Shell:
         self.clipboard = ""
         self.exit_code: int | None = None
         self.unsaved_edit = False
+        self.with_hold = True  # whether a project on the desk gets its hold time
         self.last_words: list[str] = []
         self.page: Layer = Layer(self)
 
@@ -264,11 +264,8 @@ class Shell:
 
     def go_to(self, path: str) -> None:
         """Stand on a thing in the carton, and open it."""
-        from coldbox.tui.pages.carton import Page
-
         self._turn("carton")
-        if isinstance(self.page, Page):
-            self.page.stand_on(path)
+        self.page.stand_on(path)
         self.open_sheet(path)
 
     def open_sheet(self, path: str) -> None:
@@ -293,14 +290,11 @@ class Shell:
     def _add(self, table: str, face: str) -> None:
         if self.desk is None or self._reads_only():
             return
-        self._then_open(self.desk.add(table, face))
+        self._then_open(self.desk.add(table, "" if (table, face) == ("doors", "floor") else face))
 
     def _then_open(self, path: str) -> None:
-        from coldbox.tui.pages.carton import Page
-
         self.edited()
-        if isinstance(self.page, Page):
-            self.page.stand_on(path)
+        self.page.stand_on(path)
         self.open_sheet(path)
 
     def change_thing(self, action: str, path: str) -> None:
@@ -353,7 +347,7 @@ class Shell:
         self.unsaved_edit = True
         for page in self.pages.values():
             page.changed()
-        for sheet in self.sheets:
+        for sheet in self.sheets[:]:
             sheet.changed()
 
     def ask_to_leave(self, then: Callable[[], None]) -> None:

@@ -93,6 +93,25 @@ def test_a_layer_loads_nothing_above_it(layer):
     assert not among(loaded(*modules_of(layer)), above)
 
 
+# The files of the screens that know the toolkit; what they show is decided without it.
+TOOLKIT = {"coldbox.tui.app", "coldbox.tui.looks", "coldbox.tui.widgets.surface"}
+
+
+def test_only_a_few_files_know_the_toolkit():
+    users = {
+        ".".join(path.relative_to(ROOT).with_suffix("").parts)
+        for path in PACKAGE.rglob("*.py")
+        if any(
+            f"{word} {library}" in path.read_text(encoding="utf-8")
+            for library in ("textual", "rich")
+            for word in ("from", "import")
+        )
+    }
+    assert users == TOOLKIT
+    rest = [name for name in modules_of("tui") if name not in users]
+    assert not among(loaded(*rest), {"textual", "rich", "pint", "scipy"})
+
+
 def test_physics_knows_numpy_only():
     added = loaded(*modules_of("physics"))
     ours = {name for name in added if name.startswith("coldbox")}

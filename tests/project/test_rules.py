@@ -37,6 +37,11 @@ BROKEN = {
     "wall on the ground": (
         OUTSIDE + '[faces]\nleft = { neighbour = "ground" }\n', "faces.left.neighbour", "floor", "left ="
     ),
+    "door into the ground": (
+        OUTSIDE + '[faces]\nfloor = { neighbour = "ground" }\n'
+        '[[doors]]\nname = "hatch"\nface = "floor"\nwidth = "1 m"\nheight = "1 m"\n',
+        "doors.hatch.face", "ground", "face =",
+    ),
     "ground far from any known year": (
         OUTSIDE.replace("55.1° N", "50° S").replace("14.7° E", "80° E") + '[faces]\nfloor = { neighbour = "ground" }\n',
         "site.ground_temperature", "year", "[site]",

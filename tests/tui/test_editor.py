@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from coldbox.tui.widgets.editor import Editor
 from hypothesis import given
 from hypothesis import strategies as st
+
+from coldbox.tui.widgets.editor import Editor
 
 KEYS = ["left", "right", "home", "end", "backspace", "delete", "ctrl+u", "ctrl+k", "ctrl+w", "x", "é", " "]
 

@@ -93,6 +93,10 @@ def panel(opening: Opening, name: str, sizes: Mapping[str, Number | None]) -> Pa
 def door(opening: Opening, name: str) -> Door:
     """A door, with what protects it."""
     reader = opening.reader
+    if opening.neighbour == "ground":
+        key = "neighbour" if reader.has("neighbour") else "face"
+        said = f"A door opens into air, and behind the {opening.face.name} is the ground."
+        reader.problem(key, f'{said} Put it on another face, or write what air is behind it, such as "room".')
     protection, held, power = _protection(reader)
     traffic = reader.value if reader.has("passages") or reader.has("stood_open") else reader.quiet
     return Door(

@@ -4,8 +4,11 @@ from __future__ import annotations
 
 from functools import partial
 
-from coldbox.paper.drawing.carton import carton
+from coldbox.account.entry import Load
+from coldbox.paper.drawing.canvas import Span
+from coldbox.paper.drawing.carton import Drawing, carton
 from coldbox.paper.load import figure
+from coldbox.tui.desk import Desk
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.layer import Area, Layer
 from coldbox.tui.pages.load import ranked
@@ -26,6 +29,10 @@ class Page(Layer):
         super().__init__(shell)
         self.at = "faces.front"
         self._places: dict[str, tuple[int, int, int, int]] = {}
+        self._drawn: Drawing | None = None  # of this load, in this manner
+        self._rows: list[list[Span]] = []
+        self._of: Load | None = None
+        self._how: tuple[object, ...] = ()
 
     def draw(self, frame: Frame, area: Area) -> None:
         desk = self.shell.desk
@@ -35,10 +42,8 @@ class Page(Layer):
         beside = ACCOUNT if area.width >= 70 else 0
         beside = min(max(beside, area.width // 4), 44) if beside else 0
         width = area.width - beside - (1 if beside else 0)
-        drawing = carton(
-            desk.project, desk.load, width, area.height, system=desk.system, ascii_only=frame.ascii_drawing
-        )
-        frame.paste(area.x, area.y, drawing.canvas.rows(), width, area.height)
+        drawing = self._drawing(desk, width, area.height, ascii_only=frame.ascii_drawing)
+        frame.paste(area.x, area.y, self._rows, width, area.height)
         self._places = {
             path: (area.x + place.x, area.y + place.y, place.width, place.height)
             for path, place in drawing.places.items()
@@ -48,6 +53,15 @@ class Page(Layer):
         self._mark(frame)
         if beside:
             self._account(frame, Area(area.x + width + 1, area.y, beside, area.height))
+
+    def _drawing(self, desk: Desk, width: int, height: int, *, ascii_only: bool) -> Drawing:
+        """The carton; drawn anew where the load, the room or the units are others than before."""
+        assert desk.project is not None and desk.load is not None
+        how = (width, height, desk.system, ascii_only)
+        if self._drawn is None or desk.load is not self._of or how != self._how:
+            self._drawn = carton(desk.project, desk.load, width, height, system=desk.system, ascii_only=ascii_only)
+            self._rows, self._of, self._how = self._drawn.canvas.rows(), desk.load, how
+        return self._drawn
 
     def _nothing(self, frame: Frame, area: Area) -> None:
         desk = self.shell.desk
@@ -127,7 +141,6 @@ class Page(Layer):
         return [Target(x, y, partial(self.stand_on, path)) for path, (x, y, _, _) in self._places.items()]
 
     def stand_on(self, path: str) -> None:
-        """Put the cursor on a thing."""
         self.at = path
 
     def spoken(self) -> str:

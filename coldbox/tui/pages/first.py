@@ -124,12 +124,12 @@ class Page(Layer):
     def leave(self) -> None:
         self.folder.stop()
 
-    def stand_on(self, index: int) -> None:
+    def to_row(self, index: int) -> None:
         """Put the cursor on a row."""
         self.rows.at = index
 
     def targets(self) -> list[Target]:
-        return [Target(x, y, partial(self.stand_on, index)) for x, y, index in self._places]
+        return [Target(x, y, partial(self.to_row, index)) for x, y, index in self._places]
 
     def spoken(self) -> str:
         found = self.found()

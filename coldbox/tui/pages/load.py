@@ -120,12 +120,12 @@ class Page(Layer):
         count = len(ranked(self.load)) if self.load is not None else 0
         return self.rows.move(action, count, self.room)
 
-    def stand_on(self, index: int) -> None:
+    def to_row(self, index: int) -> None:
         """Put the cursor on a row."""
         self.rows.at = index
 
     def targets(self) -> list[Target]:
-        return [Target(x, y, partial(self.stand_on, index)) for x, y, index in self._places]
+        return [Target(x, y, partial(self.to_row, index)) for x, y, index in self._places]
 
     def copied(self) -> str:
         return "\n".join(text for _, text in self._told(76))

@@ -30,6 +30,8 @@ class EditSheet(Layer):
         self.refused = ""
         self.meant = ""  # what is understood so far of what is being typed
         self._lines: list[Line] | None = None
+        self._count, self._place = 0, 0  # of the things of its table: how it is known again under another name
+        self._keep_place()
 
     @property
     def lines(self) -> list[Line]:
@@ -49,7 +51,30 @@ class EditSheet(Layer):
         return self.editor is not None
 
     def changed(self) -> None:
+        """After a change: the thing may have another name now, or be gone, and then the sheet goes too."""
         self._lines = None
+        alike = self._alike()
+        if self.thing in alike:
+            self._keep_place()
+            return
+        if len(alike) == self._count and self._place < len(alike):
+            self._stand(alike[self._place])
+        else:
+            self.shell.close(self)
+
+    def _alike(self) -> list[Thing]:
+        """The things of the same table, in the order of the file."""
+        return [one for one in self.shell.things() if one.table == self.thing.table]
+
+    def _stand(self, thing: Thing) -> None:
+        self.thing = thing
+        self._keep_place()
+        self.shell.page.stand_on(thing.path)
+
+    def _keep_place(self) -> None:
+        alike = self._alike()
+        if self.thing in alike:
+            self._count, self._place = len(alike), alike.index(self.thing)
 
     # Drawing
 
@@ -124,6 +149,7 @@ class EditSheet(Layer):
     def act(self, action: str) -> bool:
         if self.editor is not None:
             return self._act_typing(action)
+        self.refused = ""
         match action:
             case "accept":
                 self._open()

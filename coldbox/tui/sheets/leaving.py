@@ -23,7 +23,7 @@ def _nothing() -> None:
 
 def opened(shell: Shell, path: Path) -> None:
     """A project on the desk; the carton is shown, and over it what has to be asked first."""
-    desk = Desk.open(str(path))
+    desk = Desk.open(str(path), hold=shell.with_hold)
     if shell.desk is not None:
         shell.desk.close()
     shell.desk = desk
