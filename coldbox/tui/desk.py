@@ -302,7 +302,11 @@ class Desk:
         face: the one it stands on, where it can stand on one.
         """
         changed, path = documents.with_new(self.document, table, face)
-        self._change(f"new {path}", changed)
+        made = self._made(changed)
+        if face and not isinstance(made, Project) and not self.problems:  # a door in a floor on the ground, for one
+            changed, path = documents.with_new(self.document, table)
+            made = self._made(changed)
+        self._change(f"new {path}", changed, made)
         return path
 
     def open_door(self, hours: float) -> str:
