@@ -197,15 +197,15 @@ class _Walk:
         """One value; None, and a problem, when it will not do."""
         if isinstance(value, Option):
             return self.option(field, value)
-        seen = (field.table, field.key, value) if self.known is not None and isinstance(value, str) else None
-        if seen is not None and self.known is not None and seen in self.known:
+        seen = (field.table, field.key, value) if isinstance(value, str) else None
+        if self.known is not None and seen is not None and seen in self.known:
             return self.known[seen]
         try:
             entered = from_toml(field, value, self.typed(value, key), self.lines.line(key), self.system)
         except Wrong as wrong:
             self.problem(str(wrong), path, key)
             return None
-        if seen is not None and self.known is not None:
+        if self.known is not None and seen is not None:
             if len(self.known) > MOST_KNOWN:
                 self.known.clear()
             self.known[seen] = entered

@@ -284,7 +284,7 @@ class Desk:
         if value is not None:
             return documents.shown(value)
         origin = None if self.project is None else self.project.origins.get(path)
-        return "" if origin is None else origin.text
+        return "" if origin is None or origin.kind in ("typed", "option") else origin.text
 
     def back(self, path: str) -> str:
         """A value back to what the shop library has, or to its default; what holds then. Raises Refused."""

@@ -56,7 +56,9 @@ def _line(desk: Desk, thing: Thing, field: Field, value: Any, row: Block | None)
     text = "" if value is None or inline else shown(value)
     kind, reason = "typed", field.default_reason
     if value is None:
-        kind = "" if origin is None else "default" if origin.kind == "option" else origin.kind
+        if origin is not None and origin.kind in ("typed", "option"):  # of the last project that was whole
+            origin = None
+        kind = "" if origin is None else origin.kind
         text = "" if origin is None else origin.text
         reason = field.default_reason if origin is None else origin.reason
     elif row is not None and _same(field, text, row.values.get(field.key)):

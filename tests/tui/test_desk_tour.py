@@ -22,8 +22,8 @@ SI = {
 IP = {
     "length": "236.2204724 in", "width": "16.40419948 ft", "height": "9.842519685 ft", "cold": "-4 °F",
     "wide": "3.937007874 ft", "high": "7.874015748 ft", "narrow": "35.43307087 in", "arrives": "1984.160358 lb/day",
-    "warm": "10.4 °F", "stored": "4409.24524 lb", "limit": "3.2 °F", "foam": "5.905511811 in", "wind": "8.947745884 mph",
-    "lamp": "682.4283266 Btu/h",
+    "warm": "10.4 °F", "stored": "4409.24524 lb", "limit": "3.2 °F", "foam": "5.905511811 in",
+    "wind": "8.947745884 mph", "lamp": "682.4283266 Btu/h",
 }  # fmt: skip
 
 
