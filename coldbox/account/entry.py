@@ -8,9 +8,9 @@ from typing import Literal
 from coldbox.physics.number import FloatArray, Number
 from coldbox.project.model import Project
 from coldbox.record import Record
-from coldbox.scene.finding import Finding
+from coldbox.scene.finding import Figure, Finding, Text
 
-__all__ = ["GROUPS", "Entry", "Finding", "Group", "Input", "Load"]
+__all__ = ["GROUPS", "Entry", "Figure", "Finding", "Group", "Input", "Load", "Text"]
 
 GROUPS = ("transmission", "sun", "infiltration", "product", "internal", "equipment")
 Group = Literal["transmission", "sun", "infiltration", "product", "internal", "equipment"]

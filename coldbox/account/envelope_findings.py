@@ -7,7 +7,7 @@ from typing import Literal
 
 import numpy as np
 
-from coldbox.account.entry import Finding
+from coldbox.account.entry import Figure, Finding, Text
 from coldbox.account.surfaces import SurfaceFact
 from coldbox.account.transmission import Envelope
 from coldbox.physics import panel
@@ -69,18 +69,22 @@ def _panel_minimum(scene: Scene) -> Iterator[Finding]:
     if "us-walk-in" not in project.box.rules:
         if misses:
             share, needed, one = min(misses, key=lambda miss: miss[0])
-            text = f"no rules chosen; as a US walk-in its {one.label} of R-{share * needed / R_IP:.1f} would miss"
-            yield _finding("note", "rules-unasked", f"{text} R-{needed / R_IP:.0f}", WALK_IN_RULE, "box.rules")
+            text = (
+                f"no rules chosen; as a US walk-in its {one.label} would miss the minimum: ",
+                *_against(share * needed, needed),
+            )
+            yield _finding("note", "rules-unasked", text, WALK_IN_RULE, "box.rules")
         return
     for share, needed, one in misses:
-        text = f"{one.label}: foam of R-{share * needed / R_IP:.1f} at {mean_c * 1.8 + 32:.0f} °F mean"
-        yield _finding(
-            "caution",
-            "panel-minimum",
-            f"{text}, the minimum is R-{needed / R_IP:.0f} ({needed:.2f} m²K/W); your local code rules",
-            WALK_IN_RULE,
-            one.id,
-        )
+        at = (" at a mean of ", Figure(value=mean_c, kind="temperature"), "; your local code rules")
+        text = (f"{one.label}: ", *_against(share * needed, needed), *at)
+        yield _finding("caution", "panel-minimum", text, WALK_IN_RULE, one.id)
+
+
+def _against(has: float, needed: float) -> tuple[str | Figure, ...]:
+    """The R of the foam and the R the rule asks for; known by their IP figures everywhere."""
+    asked = Figure(value=needed, kind="resistance", digits=3, both=True)
+    return "its foam has ", Figure(value=has, kind="resistance", digits=3, both=True), ", the rule asks for ", asked
 
 
 def _could_be_walk_in(scene: Scene) -> bool:
@@ -104,14 +108,16 @@ def _transport_class(scene: Scene, envelope: Envelope) -> Iterator[Finding]:
         if name not in ATP_K or rule == name:
             continue
         limit = ATP_K[name]
-        if k > limit * (1.0 + SAME):
-            text = f"K {k:.2f} W/m²K is above the {limit:.2f} of class {name.upper()}"
-            yield _finding(
-                "caution", "atp-class", f"{text}; only a test station certifies", "ATP, annex 1", "box.rules"
-            )
-        else:
-            text = f"K {k:.2f} W/m²K is within the {limit:.2f} of class {name.upper()}"
-            yield _finding("note", "atp-class", f"{text}; a calculated K never certifies", "ATP, annex 1", "box.rules")
+        above = k > limit * (1.0 + SAME)
+        text = (
+            "K ",
+            Figure(value=k, kind="transmittance", digits=3),
+            f" is {'above' if above else 'within'} the ",
+            Figure(value=limit, kind="transmittance", digits=3),
+            f" of class {name.upper()}; ",
+            "only a test station certifies" if above else "a calculated K never certifies",
+        )
+        yield _finding("caution" if above else "note", "atp-class", text, "ATP, annex 1", "box.rules")
 
 
 def _sweating(fact: SurfaceFact) -> Iterator[Finding]:
@@ -119,29 +125,44 @@ def _sweating(fact: SurfaceFact) -> Iterator[Finding]:
     if over >= 0.0:
         return
     dew = float(np.mean(fact.dew_point_c))
-    where = f"{fact.label}: its outside falls to {dew + over:.1f} °C, the dew point there is {dew:.1f} °C"
+    where = (
+        f"{fact.label}: its outside falls to ",
+        Figure(value=dew + over, kind="temperature"),
+        ", the dew point there is ",
+        Figure(value=dew, kind="temperature"),
+    )
     level: Literal["note", "caution"] = "note" if fact.behind == "outdoors" else "caution"
     what = "dew in clear nights" if fact.behind == "outdoors" else "it sweats: more insulation, drier air or heat there"
-    yield _finding(level, "sweating", f"{where}; {what}", "ISO 13788", fact.id)
+    yield _finding(level, "sweating", (*where, f"; {what}"), "ISO 13788", fact.id)
 
 
 def _frost_heave(scene: Scene, facts: Mapping[str, Number]) -> Iterator[Finding]:
     centre = facts.get("under_floor_centre_c")
     if centre is None or float(np.max(scene.room.temperature_c)) >= 0.0:
         return
-    coldest = float(np.min(centre))
+    coldest = Figure(value=float(np.min(centre)), kind="temperature")
     heater = facts.get("underfloor_heater_w")
     if heater is not None:
-        text = f"ground under the floor would settle at {coldest:.1f} °C; the heater holds it with"
-        yield _finding("note", "frost-heave", f"{text} {float(np.mean(heater)):.0f} W", "ISO 13370", "faces.floor")
-    elif coldest < HEAVE_C:
-        text = f"ground under the middle of the floor settles at {coldest:.1f} °C: below {HEAVE_C:g} °C it may freeze"
-        advice = "and lift the floor; plan a heater, a vented void or more insulation"
-        yield _finding("caution", "frost-heave", f"{text} {advice}", "ISO 13370; trade practice", "faces.floor")
+        watts = float(np.mean(heater))
+        text: Text = ("without its heater the ground under the floor would settle at ", coldest)
+        if watts > 0.0:
+            text = (*text, "; the heater holds it with ", Figure(value=watts, kind="power"))
+        else:
+            text = (*text, "; on this day the heater idles")
+        yield _finding("note", "frost-heave", text, "ISO 13370", "faces.floor")
+    elif coldest.value < HEAVE_C:
+        text = (
+            "ground under the middle of the floor settles at ",
+            coldest,
+            ": below ",
+            Figure(value=HEAVE_C, kind="temperature"),
+            " it may freeze and lift the floor; plan a heater, a vented void or more insulation",
+        )
+        yield _finding("caution", "frost-heave", text, "ISO 13370; trade practice", "faces.floor")
     else:
-        text = f"ground under the middle of the floor settles at {coldest:.1f} °C: no frost heave"
+        text = ("ground under the middle of the floor settles at ", coldest, ": no frost heave")
         yield _finding("note", "frost-heave", text, "ISO 13370", "faces.floor")
 
 
-def _finding(level: Literal["note", "caution"], name: str, text: str, rule: str, path: str) -> Finding:
+def _finding(level: Literal["note", "caution"], name: str, text: Text, rule: str, path: str) -> Finding:
     return Finding(level=level, id=name, text=text, rule=rule, path=path)

@@ -34,16 +34,19 @@ def _rest(entries: list[Entry]) -> Number:
 
 
 def _fans(scene: Scene, rest: Number) -> Entry | None:
-    """Fans run all day but for the defrosts; before any are named they are a declared share of the rest."""
+    """Fans run all day but for the defrosts; before any are named they are a declared share of the rest.
+
+    Where the room's own air thaws the coil it is they that bring it there: they run on.
+    """
     machine = scene.project.machine
     if most(machine.fans) > 0:
-        stopped = defrost_seconds(scene)
+        stopped = 0.0 if machine.defrost == "air" else defrost_seconds(scene)
         watts = machine.fans * machine.fan_power * (1.0 - stopped / SECONDS_A_DAY)
         return _steady(
             "fans",
             f"fans, {float(np.mean(machine.fans)):g}",
             watts,
-            ("as given", "as-given", "n P, stopped while it defrosts"),
+            ("as given", "as-given", "n P, all day" if machine.defrost == "air" else "n P, stopped while it defrosts"),
             (
                 Input(key="fans", label="n", value=machine.fans, kind="count"),
                 Input(key="fan_power_w", label="P of one", value=machine.fan_power, kind="power"),

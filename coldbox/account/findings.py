@@ -8,7 +8,7 @@ import numpy as np
 
 from coldbox.account import cautions, envelope_findings, goods_findings
 from coldbox.account.capacity import Capacity
-from coldbox.account.entry import Entry, Finding
+from coldbox.account.entry import Entry, Figure, Finding
 from coldbox.account.transmission import Envelope
 from coldbox.scene import Scene
 
@@ -32,7 +32,7 @@ def _sizing(scene: Scene, entries: list[Entry], sized: Capacity) -> Iterator[Fin
     for entry in entries:
         if "upper bound" in entry.remark:
             yield Finding(
-                level="note", id="open-long", text=f"{entry.label}: {entry.remark}.", rule="", path=f"{entry.id}"
+                level="note", id="open-long", text=f"{entry.label}: {entry.remark}", rule="", path=f"{entry.id}"
             )
 
 
@@ -67,8 +67,10 @@ def _transport(sized: Capacity) -> Iterator[Finding]:
         level="note",
         id="atp-exceeded",
         text=(
-            f"the ATP rule alone would ask for {float(np.mean(sized.by_atp_w)):.0f} W; doors and warm goods make this"
-            f" day ask for {float(np.mean(sized.required_w)):.0f} W"
+            "the ATP rule alone would ask for ",
+            Figure(value=float(np.mean(sized.by_atp_w)), kind="power", digits=3),
+            "; this day, with its doors and goods, asks for ",
+            Figure(value=float(np.mean(sized.required_w)), kind="power", digits=3),
         ),
         rule="ATP, annex 1",
         path="box.rules",

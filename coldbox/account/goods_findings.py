@@ -6,7 +6,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from coldbox.account.entry import Finding
+from coldbox.account.entry import Figure, Finding
 from coldbox.project.model import Limit, Lot
 from coldbox.scene import Scene
 
@@ -29,7 +29,7 @@ def _injury(lot: Lot, room: float) -> Iterator[Finding]:
         yield Finding(
             level="danger",
             id="freezing-injury",
-            text=f"{lot.name} lives and freezes at {freezing:.1f} °C; the room is held at {room:.1f} °C",
+            text=(f"{lot.name} lives and freezes at ", _degrees(freezing), "; the room is held at ", _degrees(room)),
             rule="USDA Agriculture Handbook 66",
             path=f"lots.{lot.name}",
         )
@@ -38,8 +38,10 @@ def _injury(lot: Lot, room: float) -> Iterator[Finding]:
             level="caution" if lives else "danger",
             id="chilling-injury" if lives else "too-cold",
             text=(
-                f"{lot.name} is harmed below {float(np.mean(lot.safe_above_c)):.1f} °C;"
-                f" the room is held at {room:.1f} °C"
+                f"{lot.name} is harmed below ",
+                _degrees(float(np.mean(lot.safe_above_c))),
+                "; the room is held at ",
+                _degrees(room),
             ),
             rule="USDA Agriculture Handbook 66" if lives else "the product's own storage range",
             path=f"lots.{lot.name}",
@@ -59,12 +61,19 @@ def _guidance(scene: Scene, lot: Lot) -> Iterator[Finding]:
                 level="caution",
                 id="limit-above-guidance",
                 text=(
-                    f"{lot.name} may warm to {float(np.mean(limit.limit_c)):.1f} °C; guidance for cold holding is"
-                    f" {COLD_HOLDING_C:g} °C (41 °F) or colder; your food authority decides"
+                    f"{lot.name} may warm to ",
+                    _degrees(float(np.mean(limit.limit_c))),
+                    "; guidance for cold holding is ",
+                    Figure(value=COLD_HOLDING_C, kind="temperature", both=True),
+                    " or colder; your food authority decides",
                 ),
                 rule="FDA Food Code 3-501.16",
                 path=f"lots.{lot.name}.limits",
             )
+
+
+def _degrees(value_c: float) -> Figure:
+    return Figure(value=value_c, kind="temperature")
 
 
 def _above_guidance(limit: Limit) -> bool:

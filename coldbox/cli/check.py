@@ -12,6 +12,7 @@ from coldbox.errors import ColdboxError
 
 if TYPE_CHECKING:
     from coldbox.project.model import Project
+    from coldbox.project.shop import Difference
     from coldbox.scene.finding import Finding
     from coldbox.timeline.results import Kind
 
@@ -35,7 +36,8 @@ def run(options: argparse.Namespace) -> int:
     results = []
     for file in options.files:
         try:
-            found = tuple(_findings(file, options.set))
+            project, differences = _read(file, options.set)
+            found = tuple(_findings(project, differences))
         except ColdboxError as error:
             status = 2
             print(error, file=sys.stderr)
@@ -45,28 +47,33 @@ def run(options: argparse.Namespace) -> int:
         if options.json:
             results.append({"file": file, "findings": [data.finding_json(finding) for finding in found]})
         else:
-            common.print_document(check.document(file, found))
+            common.print_document(check.document(file, found, common.system_of(options, project)))
     if options.json:
         common.print_json(results)
     return status
 
 
-def _findings(file: str, pairs: list[str]) -> Iterator[Finding]:
-    """Of the account, of a run with every input at its middle, of the shop library; each said once."""
-    from coldbox.account.load import load
+def _read(file: str, pairs: list[str]) -> tuple[Project, list[Difference]]:
+    """The project of a file, and where it differs from the shop library."""
     from coldbox.project import codec, shop, store
     from coldbox.project.resolve import resolve
-    from coldbox.scene.finding import Finding
 
     raw, problems = codec.read(store.read_text(file), file, common.settings(pairs))
     library = shop.library(file)
-    project = resolve(raw, problems, library)
+    return resolve(raw, problems, library), shop.differences(raw, library)
+
+
+def _findings(project: Project, differences: list[Difference]) -> Iterator[Finding]:
+    """Of the account, of a run with every input at its middle, of the shop library; each said once."""
+    from coldbox.account.load import load
+    from coldbox.scene.finding import Finding
+
     said = set()
     for finding in (*load(project).findings, *_over_time(project)):
         if (finding.text, finding.path) not in said:
             said.add((finding.text, finding.path))
             yield finding
-    for one in shop.differences(raw, library):
+    for one in differences:
         level: Literal["note", "caution"] = "note" if one.kind == "moved on" else "caution"
         yield Finding(level=level, id=f"library {one.kind}", text=one.text, rule="shop library", path=one.path)
 

@@ -54,7 +54,7 @@ def run(options: argparse.Namespace) -> int:
 
         system = common.system_of(options, project)
         document = (
-            paper.defaults_document(load)
+            paper.defaults_document(project, for_load=True)
             if options.defaults
             else paper.document(load, system, how=options.how, spread=spread)
         )

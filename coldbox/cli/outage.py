@@ -31,6 +31,7 @@ def arguments(parser: argparse.ArgumentParser) -> None:
     parser.add_argument("--asked", metavar="TIME", help='how long it should hold, such as "24 h"')
     common.draw_options(parser, common.USUAL_DRAWS)
     common.result_options(parser)
+    parser.add_argument("--defaults", action="store_true", help="list the defaults used")
     parser.add_argument("--markdown", action="store_true", help="the result as Markdown")
     parser.add_argument("--csv", metavar="OUT", help="write the temperatures through time to a file")
 

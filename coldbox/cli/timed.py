@@ -12,6 +12,7 @@ from coldbox.spread import hold
 from coldbox.timeline.results import Outage, Trip
 
 if TYPE_CHECKING:
+    from coldbox.paper.document import Document
     from coldbox.project.model import Project
     from coldbox.timeline.results import Kind
 
@@ -21,6 +22,11 @@ MOST_PROCESSES = 2  # more gain little: each brings its own memory through the s
 def run(project: Project, kind: Kind, options: argparse.Namespace) -> int:
     """Compute, write what was asked for, and return the exit status."""
     common.check_draws(options)
+    if options.defaults:
+        from coldbox.paper.load import defaults_document
+
+        _show(defaults_document(project, for_load=False), options)
+        return 0
     processes = min(os.cpu_count() or 1, MOST_PROCESSES)
     with Progress(kind) as progress:
         found = hold.run(project, kind, count=options.draws, seed=options.seed, processes=processes, go_on=progress)
@@ -47,6 +53,10 @@ def _print(found: Outage, options: argparse.Namespace) -> None:
         from coldbox.paper import outage
 
         document = outage.document(found, system)
+    _show(document, options)
+
+
+def _show(document: Document, options: argparse.Namespace) -> None:
     if options.markdown:
         from coldbox.paper import markdown
 

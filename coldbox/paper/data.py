@@ -229,7 +229,7 @@ def finding_json(finding: Finding) -> dict[str, Json]:
     return {
         "level": finding.level,
         "id": finding.id,
-        "text": finding.text,
+        "text": finding.words(),
         "rule": finding.rule,
         "path": finding.path,
         "standing": finding.standing,

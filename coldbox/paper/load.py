@@ -7,9 +7,11 @@ from typing import TYPE_CHECKING, Literal
 
 import numpy as np
 
+from coldbox.account.capacity import ATP_OUTSIDE_C
 from coldbox.account.entry import GROUPS, Finding, Load
 from coldbox.paper.box import box_lines
 from coldbox.paper.document import Bars, Block, Column, Document, Heading, Paragraph, Table
+from coldbox.project.model import Project
 from coldbox.project.origins import defaults_used
 from coldbox.tables.load import source
 from coldbox.units import display_unit, show
@@ -42,7 +44,7 @@ def document(load: Load, system: System, *, how: bool = False, spread: CapacityS
         from coldbox.paper.sure import capacity_blocks
 
         blocks += capacity_blocks(spread, system)
-    blocks += findings_blocks(load.findings, heading=True)
+    blocks += findings_blocks(load.findings, system, heading=True)
     if how:
         blocks += _how(load, system, sources)
     blocks += _sources(sources)
@@ -79,9 +81,10 @@ def _answer(load: Load, system: System) -> Iterator[Block]:
         ),
     ]
     if load.by_atp_w is not None:
+        at = figure(ATP_OUTSIDE_C, "temperature", system)
         factor = "1.35" if project.sizing.tested_with_unit else "1.75"
         rows.append(
-            ("ATP rule", f"{factor} x heat through the walls at 30 °C", power(load.by_atp_w), mark.get("atp", ""))
+            ("ATP rule", f"{factor} x heat through the walls at {at}", power(load.by_atp_w), mark.get("atp", ""))
         )
     yield Table(
         columns=(
@@ -192,7 +195,7 @@ def _after(load: Load, system: System) -> Iterator[str]:
         yield f"{used} defaults used: coldbox load --defaults"
 
 
-def findings_blocks(findings: tuple[Finding, ...], *, heading: bool = False) -> Iterator[Block]:
+def findings_blocks(findings: tuple[Finding, ...], system: System, *, heading: bool = False) -> Iterator[Block]:
     """Findings in order of danger, each with its rule and the key path it is about."""
     if not findings:
         return
@@ -204,7 +207,7 @@ def findings_blocks(findings: tuple[Finding, ...], *, heading: bool = False) -> 
                 name = level.upper() if level == "danger" else level
                 rule = f" ({finding.rule})" if finding.rule else ""
                 path = f"  {finding.path}" if finding.path else ""
-                yield Paragraph(text=f"{name}: {finding.text}{rule}{path}", indent=1)
+                yield Paragraph(text=f"{name}: {finding.words(system)}{rule}{path}", indent=1)
 
 
 def _how(load: Load, system: System, sources: dict[str, int]) -> Iterator[Block]:
@@ -239,10 +242,10 @@ def source_words(key: str) -> str:
     return f"{found['title']} ({found['where']}{memory})"
 
 
-def defaults_document(load: Load) -> Document:
-    """Every default this load used, with its reason."""
-    used = defaults_used(load.project, for_load=True)
+def defaults_document(project: Project, *, for_load: bool) -> Document:
+    """Every default that a load, or an outage or a trip as well, uses, with its reason."""
+    used = defaults_used(project, for_load=for_load)
     rows = tuple((path, value, reason) for path, value, reason in used)
     columns = (Column(title="key", gives=True), Column(title="value", gives=True), Column(title="why", gives=True))
-    head = Heading(text=f"{load.project.name}: {len(used)} defaults used", level=1)
-    return Document(title=load.project.name, blocks=(head, Table(columns=columns, rows=rows)))
+    head = Heading(text=f"{project.name}: {len(used)} defaults used", level=1)
+    return Document(title=project.name, blocks=(head, Table(columns=columns, rows=rows)))

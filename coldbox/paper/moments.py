@@ -56,7 +56,7 @@ def _table(found: Outage, system: System) -> Table:
     packs = list(found.trace.packs)[:MOST_PACKS]
     kilograms = [
         [
-            show(float(value), "mass", system, 3)
+            show(_or_nothing(float(value), found.trace.packs[name].left_kg), "mass", system, 3)
             for value in np.interp(at, found.trace.t_h, found.trace.packs[name].left_kg)
         ]
         for name in packs
@@ -76,6 +76,11 @@ def _table(found: Outage, system: System) -> Table:
     clocks = [show(found.start_clock_h + one, "clock") for one in at]
     rows = tuple(zip(clocks, *shown, *kilograms, words, strict=True))
     return Table(columns=columns, rows=rows)
+
+
+def _or_nothing(value: float, whole: FloatArray) -> float:
+    """A mass, or 0 where less than a thousandth of the most is left."""
+    return value if value >= 1e-3 * float(whole.max()) else 0.0
 
 
 def _melts(found: Outage, name: str) -> bool:

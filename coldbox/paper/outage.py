@@ -3,14 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import TYPE_CHECKING, Literal
+from typing import TYPE_CHECKING, Final, Literal
 
 import numpy as np
 
 from coldbox.paper.document import Block, Column, Document, Heading, Paragraph, Table
 from coldbox.paper.load import LEVELS, findings_blocks, source_words
-from coldbox.paper.moments import clock_blocks, of_limits, place_of
+from coldbox.paper.moments import SAME_MINUTE_H, clock_blocks, of_limits, place_of
 from coldbox.paper.sure import asked_words, driver_blocks, duration, eight_in_ten
+from coldbox.physics.number import Number
 from coldbox.scene.goods import goods
 from coldbox.timeline.results import LimitResult, Outage
 from coldbox.units import show
@@ -19,6 +20,7 @@ if TYPE_CHECKING:
     from coldbox.spread.hold import HoldSpread
 
 System = Literal["SI", "IP"]
+MUCH_PPM: Final = 1e5
 
 
 def document(found: Outage, system: System) -> Document:
@@ -40,7 +42,7 @@ def details(found: Outage, system: System) -> Iterator[Block]:
     yield Heading(text="How it was computed")
     for line in _basis(found, system):
         yield Paragraph(text=line)
-    yield from findings_blocks(found.findings, heading=True)
+    yield from findings_blocks(found.findings, system, heading=True)
     yield Heading(text="Sources")
     for number, key in enumerate(_sources(found), 1):
         yield Paragraph(text=f"[{number}] {source_words(key)}", indent=1)
@@ -61,10 +63,11 @@ def _answer(found: Outage, system: System) -> Iterator[Block]:
     yield Heading(text=how_long, level=1)
     verb = {"pulldown": "it does not get cold", "recovery": "it does not come back"}.get(found.kind, "it holds")
     yield Paragraph(text=who, indent=1)
-    yield Paragraph(text=asked_words(spread_of(found), found.asked_h, verb), indent=1)
+    within = found.kind in ("pulldown", "recovery")
+    yield Paragraph(text=asked_words(spread_of(found), found.asked_h, verb, within=within), indent=1)
     for line in others:
         yield Paragraph(text=line, indent=1)
-    yield from told_findings(found)
+    yield from told_findings(found, system)
     yield Paragraph(text=_what(found, system))
 
 
@@ -121,24 +124,49 @@ def _reached(found: Outage, system: System) -> Iterator[str]:
     spread = spread_of(found)
     range_ = f" ({eight_in_ten(spread.hours, found.horizon_h)}, 8 in 10)" if spread is not None else ""
     cold, warm = ("Cold", "Not cold") if found.kind == "pulldown" else ("All back", "Not all back")
-    since = "after power on" if found.kind == "pulldown" else "after the power went"
     if found.reached_h is None:
         yield f"{warm} within {duration(found.horizon_h)}, as far as it was looked at{range_}"
     else:
-        yield f"{cold} {duration(found.reached_h)} {since}{range_}: at {found.reached_clock}"
+        yield f"{cold} after {duration(found.reached_h)}{range_}: {found.reached_clock}"
+    yield _last_words(found, system)
+    yield from _balance(found, system)
+
+
+def _last_words(found: Outage, system: System) -> str:
+    """What comes last within its limits, or does not."""
     late = [one for one in found.limits if one.back_at_h is None and _beyond_at_end(one)]
-    back = [one for one in found.limits if one.back_at_h is not None]
     if late:
         ends = ", ".join(f"{place_of(one)} at {_degrees(one.end_c, system)}" for one in late[:3])
-        yield f"not back within its limit at the end: {ends}"
-    elif back:
-        last = max(back, key=lambda one: one.back_at_h or 0.0)
-        yield f"last: {place_of(last)}, within {_degrees(last.limit_c, system)} from {last.back_clock}"
-    elif found.limits:
-        yield "no limit is broken on the way"
+        return f"not back within its limit at the end: {ends}"
+    back = [one for one in found.limits if one.back_at_h is not None]
+    last = max(back, key=lambda one: one.back_at_h or 0.0) if back else None
+    goods = "" if found.trace.lots else "; no goods are told to come in warm"
+    if found.kind == "pulldown" and found.reached_h is None:
+        return f"the air is at {_degrees(float(found.trace.air_c[-1]), system)} in the end{goods}"
+    lots_h = 0.0 if last is None or last.back_at_h is None else last.back_at_h
+    if found.kind == "pulldown" and found.reached_h is not None and found.reached_h - lots_h > SAME_MINUTE_H:
+        within = show(_middle(found.project.machine.band) / 2.0, "difference", system)
+        at = _degrees(_middle(found.project.box.temperature), system)
+        return f"last: the air, within {within} of {at} from {found.reached_clock}{goods}"
+    if last is not None:
+        return f"last: {place_of(last)}, within {_degrees(last.limit_c, system)} from {last.back_clock}"
+    return "no limit is broken on the way" if found.limits else "nothing in it has a limit"
+
+
+def _balance(found: Outage, system: System) -> Iterator[str]:
+    """Whether the machine can hold at all what it is to pull down."""
+    if "machine_w" not in found.facts or "day_puts_in_w" not in found.facts:
+        return
+    machine, day = (_middle(found.facts[key]) for key in ("machine_w", "day_puts_in_w"))
+    out, into = (show(watts, "power", system, 3) for watts in (machine, day))
+    if machine < day:
+        yield f"it cannot stay cold: a day puts in {into}, the machine takes out {out}"
     else:
-        air = float(found.trace.air_c[-1])
-        yield f"the air is at {_degrees(air, system)} in the end; nothing in it has a limit"
+        yield f"it can stay cold: the machine takes out {out}, a day puts in {into}"
+
+
+def _middle(value: Number) -> float:
+    return float(np.ravel(value)[0])
 
 
 def _beyond_at_end(limit: LimitResult) -> bool:
@@ -146,12 +174,16 @@ def _beyond_at_end(limit: LimitResult) -> bool:
     return past > 0.0 if limit.side == "above" else past < 0.0
 
 
-def told_findings(found: Outage) -> Iterator[Block]:
-    """Dangers in full, cautions and notes as counts."""
-    for one in found.findings:
-        if one.level == "danger" and not one.standing:
-            yield Paragraph(text=f"DANGER {one.text}", indent=1)
-    counts = [(level, sum(one.level == level and not one.standing for one in found.findings)) for level in LEVELS[1:]]
+def told_findings(found: Outage, system: System) -> Iterator[Block]:
+    """Dangers and what is not counted in full, other cautions and notes as counts."""
+    own = [one for one in found.findings if not one.standing]
+    for one in own:
+        if one.level == "danger":
+            yield Paragraph(text=f"DANGER {one.words(system)}", indent=1)
+    for one in own:
+        if one.id == "still-warm":  # what the answer above leaves out stands beside it
+            yield Paragraph(text=one.words(system), indent=1)
+    counts = [(level, sum(one.level == level and one.id != "still-warm" for one in own)) for level in LEVELS[1:]]
     said = ", ".join(f"{count} {level}{'s' if count > 1 else ''}" for level, count in counts if count)
     if said:
         yield Paragraph(text=f"{said}: see below", indent=1)
@@ -163,7 +195,7 @@ def _what(found: Outage, system: System) -> str:
     start = {"pulldown": "power on at", "recovery": "power off at"}.get(found.kind, "power off at")
     start = start if box.powered else "begins at"
     back = ""
-    if found.power_back_h is not None and found.kind == "outage":
+    if found.power_back_h is not None and found.kind in ("outage", "recovery"):
         back = f", back after {duration(found.power_back_h)}"
     return f"{found.project.name}, {at}; {start} {found.start_clock}{back}; looked {duration(found.horizon_h)} ahead."
 
@@ -208,7 +240,8 @@ def _basis(found: Outage, system: System) -> Iterator[str]:
     if found.stopped:
         yield f"Stopped: {', '.join(found.stopped)}."
     for pack in found.packs:
-        spent = f"spent at {pack.spent_clock}" if pack.spent_clock else f"{100.0 * pack.frozen:.0f} % of it frozen"
+        spent = pack.spent_clock if found.kind != "pulldown" else None  # warm at the start, it may freeze again
+        spent = f"spent at {spent}" if spent else f"{100.0 * pack.frozen:.0f} % of it frozen"
         yield f"{pack.id}: {show(pack.left_kg, 'mass', system, 3)} left at the end, {spent}."
     gas = found.carbon_dioxide
     if gas is not None:
@@ -229,7 +262,8 @@ def _power_of_ten(value: float) -> str:
 
 
 def _ppm(value: float) -> str:
-    return f"{show(round(value, -2), 'count')} ppm"
+    """A concentration; from a tenth of the air on in percent, which nobody misreads."""
+    return f"{show(round(value, -2), 'count')} ppm" if value < MUCH_PPM else f"{value / 1e4:.0f} %"
 
 
 def _sources(found: Outage) -> list[str]:

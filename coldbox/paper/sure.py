@@ -18,6 +18,7 @@ System = Literal["SI", "IP"]
 
 ROUNDS_MIN: Final = (1.0, 2.0, 5.0, 10.0, 15.0, 30.0, 60.0)
 MOST_DRIVERS: Final = 6
+NOTHING_MOVES: Final = "No input moves it more than chance does."
 _COLUMNS: Final = (
     Column(title="input", gives=True),
     Column(title="where lowest", align="right"),
@@ -49,14 +50,14 @@ def eight_in_ten(found: Percentiles, horizon_h: float) -> str:
     return f"{low} to {high}"
 
 
-def asked_words(spread: HoldSpread | None, asked_h: float, verb: str) -> str:
-    """The third line: how sure that it holds, or is reached, as long as asked."""
+def asked_words(spread: HoldSpread | None, asked_h: float, verb: str, *, within: bool = False) -> str:
+    """The third line: how sure that it holds as long as asked, or is reached within that."""
     if spread is None:
         return f"how sure: not looked into; --draws 500 tells how sure the asked {duration(asked_h)} are"
     if spread.asked is None:
         never = f"in {percent(spread.never.share)} of {spread.draws} draws {verb} to the end"
         return f"how sure: the asked {duration(asked_h)} are beyond what was looked at; {never}"
-    return f"the asked {duration(asked_h)}: {sure_words(spread.asked, spread)}"
+    return f"{'within ' if within else ''}the asked {duration(asked_h)}: {sure_words(spread.asked, spread)}"
 
 
 def sure_words(found: Chance, spread: HoldSpread) -> str:
@@ -81,7 +82,9 @@ def driver_blocks(spread: HoldSpread) -> Iterator[Block]:
     """What moves the hours most, as a table, lowest and highest fifth of each input."""
     yield Heading(text="What moves it")
     if not spread.drivers:
-        yield Paragraph(text="No input moves it more than chance does.")
+        beyond = spread.never.share == 1.0
+        text = "All draws lie beyond the horizon: nothing moves it into it." if beyond else NOTHING_MOVES
+        yield Paragraph(text=text)
     else:
         rows = tuple(
             (_named(one), _signed(one.at_lowest), _signed(one.at_highest)) for one in spread.drivers[:MOST_DRIVERS]

@@ -42,7 +42,7 @@ def _answer(found: Trip, system: System) -> Iterator[Block]:
         yield Paragraph(text=f"every limit kept to the end: {sure}", indent=1)
     for line in then_words(found, system):
         yield Paragraph(text=line, indent=1)
-    yield from told_findings(found)
+    yield from told_findings(found, system)
     temperature = show(float(found.trace.air_c[0]), "temperature", system)
     yield Paragraph(
         text=f"{found.project.name}; leaves at {found.start_clock} with {temperature} inside, back at {arrives}."

@@ -33,6 +33,7 @@ if TYPE_CHECKING:
 DRAWS: Final = 500
 SEED: Final = 1
 BLOCK: Final = 1000  # draws that stay near the processor, and that a stop waits for at most
+DAY_S: Final = 86400.0
 WORTH_A_PROCESS: Final = 2 * BLOCK  # draws below which starting another takes longer than it saves
 
 GoOn = Callable[[float], bool]
@@ -70,9 +71,13 @@ def run(
     share done now and then; False stops. Result: the timeline's, single figures of the middle, arrays of the draws
     without it, `spread` a HoldSpread. Raises what the timeline raises; Stopped.
     """
-    project, said = _with_machine(project, kind)
+    project, said, facts = _with_machine(project, kind)
     found = _run(project, kind, count, seed, processes, block, go_on)
-    return found.replace(notes=(*said, *found.notes), findings=(*found.findings, *_standing(project)))
+    return found.replace(
+        notes=(*said, *found.notes),
+        findings=(*found.findings, *_standing(project)),
+        facts={**found.facts, **facts},
+    )
 
 
 def _run(project: Project, kind: Kind, count: int, seed: int, processes: int, block: int, go_on: GoOn | None) -> Outage:
@@ -100,24 +105,34 @@ def engine(kind: Kind) -> Callable[..., Outage]:
     return runs[kind]
 
 
-def _with_machine(project: Project, kind: Kind) -> tuple[Project, tuple[str, ...]]:
-    """The project with a machine where one runs and none is named: as large as the load asks for; and what to say."""
-    if project.machine.capacity is not None or not _runs(project, kind):
-        return project, ()
-    capacity = float(np.mean(load(project).required_capacity_w))
-    told = f"no machine is named: the {show(capacity, 'power', project.units, 3)} that the load asks for are taken"
-    return project.replace(machine=project.machine.replace(capacity=capacity)), (told,)
+def _with_machine(project: Project, kind: Kind) -> tuple[Project, tuple[str, ...], dict[str, float]]:
+    """The project with a machine where one runs and none is named: as large as the load asks for.
+
+    With what to say of it and, for a pull-down, what the machine takes out and what a day puts in, W.
+    """
+    named = project.machine.capacity is not None
+    if kind != "pulldown" and (named or not _runs(project, kind)):
+        return project, (), {}
+    asked = load(project)
+    capacity = project.machine.capacity if named else asked.required_capacity_w
+    assert capacity is not None, "named, or asked for"
+    watts = float(np.ravel(capacity)[0])
+    facts = {}
+    if kind == "pulldown":
+        facts = {"machine_w": watts, "day_puts_in_w": max(float(asked.counted_daily_j), 0.0) / DAY_S}
+    if named:
+        return project, (), facts
+    told = f"no machine is named: the {show(watts, 'power', project.units, 3)} that the load asks for are taken"
+    return project.replace(machine=project.machine.replace(capacity=watts)), (told,), facts
 
 
 def _runs(project: Project, kind: Kind) -> bool:
     """Whether a machine runs at some time of this."""
-    if not project.box.powered:
-        return False
-    if kind == "trip":
-        trip = project.trip
-        return trip is not None and (any(leg.power for leg in trip.legs) or any(stop.power for stop in trip.stops))
-    back = project.outage.lasts is not None or any(event.what == "power on" for event in project.outage.events)
-    return kind in ("pulldown", "recovery") or back
+    from coldbox.timeline.legs import trip_course
+    from coldbox.timeline.outage import course
+
+    found = trip_course(project)[0] if kind == "trip" else course(project)
+    return any(on for _, on in found.power)
 
 
 def _standing(project: Project) -> tuple[Finding, ...]:

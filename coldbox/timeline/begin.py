@@ -3,8 +3,8 @@
 A powered room: its air has been held at its temperature for days, until the walls of the first draw repeat within a
 hundredth of a kelvin; a heated floor has settled. Stored goods are as warm as the room; what lives has its own heat in
 it, built up over ten days. Today's intake has cooled since it came, as a body of its own. A start temperature that is
-told rules. A box that nothing cools has its walls settled between its start temperature and the surroundings of the
-first hour.
+told rules. Before a pull-down goods are as warm as they come: they are put in as it begins. A box that nothing cools
+has its walls settled between its start temperature and the surroundings of the first hour.
 """
 
 from __future__ import annotations
@@ -27,14 +27,19 @@ BREATHING_DAYS: Final = 10
 BREATHING_STEP_S: Final = 3600.0
 
 
-def begin(rig: Rig, hours: Hours, start_s: float, *, normal_days: bool) -> State:
-    """The state at the start. normal_days: whether the air has been held at the network's start temperature before."""
+def begin(rig: Rig, hours: Hours, start_s: float, *, normal_days: bool, goods_before: bool) -> State:
+    """The state at the start.
+
+    normal_days: whether the air has been held at the network's start temperature before. goods_before: whether the
+    goods have been in it; else they are put in now, as warm as the network has them.
+    """
     if not normal_days:
         return solver.start(rig.network, hours.during(start_s, start_s + 1.0))
     state = solver.start(rig.network, hours.mean_held())
     _walls(rig, hours, start_s, state)
     envelope.held_floors(rig.network, rig.envelope, rig.network.start_c, state)
-    _goods(rig, hours, start_s, state)
+    if goods_before:
+        _goods(rig, hours, start_s, state)
     return state
 
 

@@ -7,7 +7,8 @@ from typing import Final
 
 import numpy as np
 
-from coldbox.scene.finding import Finding
+from coldbox.physics.number import FloatArray
+from coldbox.scene.finding import Figure, Finding
 from coldbox.timeline.course import clock, middle
 from coldbox.timeline.outcome import HOUR_S, PPM, Outcome, first_of
 from coldbox.units import show
@@ -33,7 +34,8 @@ def _gas(found: Outcome) -> Iterator[Finding]:
         return
     path = f"packs.{found.run.rig.dry_ice[0]}"
     if middle(found.run.rig.scene.body.volume) >= STANDS_IN_M3:
-        said = _too_much(gas.box_ppm, "in the room", found.clock(gas.box_at_h), path)
+        inside = found.through_time().carbon_dioxide_ppm
+        said = None if inside is None else _too_much(found, inside, "in the room", path)
         if said is not None:
             yield said
     else:
@@ -44,31 +46,37 @@ def _gas(found: Outcome) -> Iterator[Finding]:
             rule="NIOSH IDLH 40 000 ppm",
             path=path,
         )
-    if gas.around is not None and gas.around_ppm is not None and gas.around_at_h is not None:
-        said = _too_much(gas.around_ppm, f"around it, in {gas.around},", found.clock(gas.around_at_h), path)
+    if gas.around is not None:
+        said = _too_much(found, found.around()[1], f"around it, in {gas.around},", path)
         if said is not None:
             yield said
     else:
-        kilograms = show(gas.gas_kg, "mass")
         yield Finding(
             level="caution",
             id="carbon-dioxide-around",
-            text=f"{kilograms} of dry ice turns into gas where the box stands: tell the volume and the air change of"
-            " that room or cab to see how much carbon dioxide it comes to, and ventilate it",
+            text=(
+                Figure(value=gas.gas_kg, kind="mass"),
+                " of dry ice turns into gas where the box stands: tell the volume and the air change of that room or"
+                " cab to see how much carbon dioxide it comes to, and ventilate it",
+            ),
             rule="OSHA PEL 5 000 ppm",
             path="neighbours",
         )
 
 
-def _too_much(ppm: float, where: str, at: str | None, path: str) -> Finding | None:
+def _too_much(found: Outcome, ppm: FloatArray, where: str, path: str) -> Finding | None:
+    """The highest of the limits that a course of concentrations passes: from when, and the most it comes to."""
+    most = int(np.argmax(ppm))
     for limit, level, meaning, rule in GAS:
-        if ppm >= limit:
+        if ppm[most] >= limit:
             keep_out = "keep out" if level == "danger" else "stay no longer than you must"
+            hours = found.hours(found.trace.times_s)
+            since, at = (found.clock(float(hours[row])) for row in (int(np.argmax(ppm >= limit)), most))
             return Finding(
                 level="danger" if level == "danger" else "caution",
                 id="carbon-dioxide",
-                text=f"carbon dioxide {where} reaches {_share(ppm)} at {at}; {show(limit, 'count')} ppm is {meaning}:"
-                f" {keep_out}, ventilate, ask your safety officer",
+                text=f"carbon dioxide {where} is over {show(limit, 'count')} ppm, {meaning}, from {since} and reaches"
+                f" {_share(float(ppm[most]))} at {at}: {keep_out}, ventilate, ask your safety officer",
                 rule=rule,
                 path=path,
             )
@@ -81,15 +89,17 @@ def _share(ppm: float) -> str:
 
 def _still_warm(found: Outcome) -> Iterator[Finding]:
     """Today's goods that the machine had not brought within their limits yet."""
-    for label in dict.fromkeys(one.body.label for one in found.run.still_warm if one.body is not None):
-        body = next(one.body for one in found.run.still_warm if one.body is not None and one.body.label == label)
-        yield Finding(
-            level="caution",
-            id="still-warm",
-            text=f"{label} had not come within its limit when this begins: it is not counted above. Look at it first",
-            rule="common practice",
-            path=f"lots.{body.lot.name}",
-        )
+    bodies = list({one.body.label: one.body for one in found.run.still_warm if one.body is not None}.values())
+    if not bodies:
+        return
+    names = "; ".join(body.label for body in bodies)
+    yield Finding(
+        level="caution",
+        id="still-warm",
+        text=f"not counted, beyond a limit when this begins: {names}. Look there first",
+        rule="common practice",
+        path=f"lots.{bodies[0].lot.name}" if len(bodies) == 1 else "lots",
+    )
 
 
 def _spoiling(found: Outcome) -> Iterator[Finding]:

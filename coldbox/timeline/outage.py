@@ -15,6 +15,7 @@ from coldbox.timeline.findings import findings
 from coldbox.timeline.network import Factors, goods_kg
 from coldbox.timeline.outcome import HOUR_S, Outcome, first_of
 from coldbox.timeline.results import Kind, Outage
+from coldbox.units import show
 
 KWH: Final = 3.6e6
 
@@ -28,8 +29,8 @@ def outage(
     share done; False stops. series: whether to keep the middle's figures through time. Raises BadProject,
     OutOfValidity, Stopped.
     """
-    course = _course(project)
-    run = runs.run(project, course, factors=factors, series=series, go_on=go_on)
+    planned = course(project)
+    run = runs.run(project, planned, factors=factors, series=series, go_on=go_on)
     return Outage(**answers(Outcome(run, series=series), "outage"))
 
 
@@ -37,11 +38,19 @@ def recovery(
     project: Project, *, factors: Factors | None = None, go_on: runs.GoOn | None = None, series: bool = True
 ) -> Outage:
     """When the last lot is back within its limits after the outage. Arguments as for `outage`."""
-    course = _course(project)
-    if events.power_back_s(course) is None:
+    planned = course(project)
+    back_s = events.power_back_s(planned)
+    if back_s is None:
         text = 'A recovery needs the hour at which power is back: write how long the outage lasts, such as "12 h".'
         raise BadProject([Problem(text, file=project.file, path="outage.lasts")])
-    run = runs.run(project, course, factors=factors, series=series, go_on=go_on)
+    horizon_s = planned.end_s - planned.start_s
+    if back_s >= horizon_s:
+        text = (
+            f"Power is back after {show(back_s, 'duration')}, but it looks only {show(horizon_s, 'duration')} ahead:"
+            " write a longer horizon."
+        )
+        raise BadProject([Problem(text, file=project.file, path="outage.horizon")])
+    run = runs.run(project, planned, factors=factors, series=series, go_on=go_on)
     found = Outcome(run, series=series)
     given = answers(found, "recovery", back=True)
     back = _last(found, given)
@@ -61,9 +70,9 @@ def pulldown(
     if not project.box.powered:
         text = "Nothing cools this box: a pull-down needs a machine. Write powered = true."
         raise BadProject([Problem(text, file=project.file, path="box.powered")])
-    course = events.powered_course(project, middle(project.outage.horizon))
+    powered = events.powered_course(project, middle(project.outage.horizon))
     run = runs.run(
-        project, course, factors=factors, warm=True, back_at_k=project.machine.band / 2.0, series=series, go_on=go_on,
+        project, powered, factors=factors, warm=True, back_at_k=project.machine.band / 2.0, series=series, go_on=go_on,
     )  # fmt: skip
     found = Outcome(run, series=series)
     given = answers(found, "pulldown", back=True)
@@ -120,7 +129,8 @@ def answers(found: Outcome, kind: Kind, *, back: bool = False) -> dict[str, Any]
     }
 
 
-def _course(project: Project) -> Course:
+def course(project: Project) -> Course:
+    """What happens in a project's outage."""
     planned = project.outage
     lasts = None if planned.lasts is None else middle(planned.lasts)
     return events.outage_course(project, lasts_s=lasts, horizon_s=middle(planned.horizon))

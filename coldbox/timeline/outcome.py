@@ -8,7 +8,6 @@ import numpy as np
 
 from coldbox.physics import constants, moist_air
 from coldbox.physics.number import FloatArray
-from coldbox.project.model import Lot, Project
 from coldbox.timeline.course import clock, middle
 from coldbox.timeline.packs import GAS_CONSTANT
 from coldbox.timeline.results import (
@@ -61,6 +60,8 @@ class Outcome:
         body = one.body
         extreme = trace.highest if limit.side == "above" else trace.lowest
         comes = body is not None and body.kind == "coming"
+        start_c = middle(body.start_c if body is not None and comes else trace.first[one.signal])
+        worst_c = float(extreme[one.signal, 0])
         return LimitResult(
             lot="box" if body is None else body.label,
             side=limit.side,
@@ -69,9 +70,9 @@ class Outcome:
             allowed_min=float(limit.allowed_s) / 60.0,
             crossed_at_h=at,
             at_clock=self.clock(at),
-            start_c=middle(body.start_c if body is not None and comes else trace.first[one.signal]),
+            start_c=start_c,
             end_c=self._end(one),
-            worst_c=float(extreme[one.signal, 0]),
+            worst_c=worst_c if np.isfinite(worst_c) else start_c,  # what is taken out as it begins is never seen
             beyond_min=float(trace.beyond_s[one.watch, 0]) / 60.0,
             back_at_h=back_at,
             back_clock=self.clock(back_at),
@@ -140,7 +141,7 @@ class Outcome:
         What leaves the box within an interval comes evenly: m' = out - n m, from nothing where the box has moved to.
         """
         times = self.trace.times_s
-        gone = -np.diff(sum(self._signal("pack mass", name, "") for name in self.run.rig.dry_ice))
+        gone = sum(self._sublimed(name) for name in self.run.rig.dry_ice)
         kelvin = self._signal("air", "", "air") + ZERO_C
         rig = self.run.rig
         whole = middle(rig.scene.body.volume) * float(rig.network.pressure[0]) / GAS_CONSTANT / kelvin
@@ -159,6 +160,17 @@ class Outcome:
             filled = middle(room.volume) * float(rig.network.pressure[0])
             ppm[i] = PPM * min(mass * GAS_CONSTANT * (middle(room.temperature) + ZERO_C) / filled, 1.0)
         return names, ppm
+
+    def _sublimed(self, name: str) -> FloatArray:
+        """Dry ice that turns into gas between two instants, kg; what is carried in or out does not."""
+        times, left = self.trace.times_s, self._signal("pack mass", name, "")
+        before = left[:-1].copy()
+        for change in sorted(self.run.rig.changes, key=lambda one: one.at_s):
+            if change.what in ("pack in", "pack out") and change.row == self.run.rig.pack_rows[name]:
+                at = np.flatnonzero((times[:-1] == change.at_s) & (change.at_s > self.start_s))
+                carried = middle(change.mass)
+                before[at] = before[at] + carried if change.what == "pack in" else np.maximum(before[at] - carried, 0.0)
+        return np.asarray(before - left[1:])
 
     def _room(self, at_s: float) -> str:
         """The named room with a volume that the box stands in at an instant, else ""."""
@@ -234,7 +246,8 @@ class Outcome:
             if body.kind == "stored":
                 found.append(body.label)
             elif body.kind == "intake" and body.arrived_s is not None:
-                found.append(f"{body.label}, in since {clock(body.arrived_s % 86400.0)}")
+                before = " the day before" if body.arrived_s < 0.0 else ""
+                found.append(f"{body.label}, in since {clock(body.arrived_s % 86400.0)}{before}")
         return (*found, *(pack.name for pack in self.run.project.packs if self._packed(pack.name)))
 
     def _packed(self, name: str) -> bool:
@@ -243,26 +256,11 @@ class Outcome:
 
     def stopped(self) -> tuple[str, ...]:
         """What stops while there is no power."""
-        project, on = self.run.project, self.run.course.going_on
-        if not project.box.powered:
-            return ()
-        things = (
-            ("lights", project.lights), ("motors", project.motors), ("heaters", project.heaters),
-            ("ventilation", project.ventilation), ("fans and defrost", (True,)),
-            ("people", project.people if "people" not in on else ()),
-            ("trucks", project.trucks if "trucks" not in on else ()),
-            ("door traffic", project.doors if "doors" not in on else ()),
-            ("deliveries", _arriving(project) if "deliveries" not in on else ()),
-        )  # fmt: skip
-        return tuple(name for name, there in things if there)
+        return tuple(self.run.hours.life.stopped()) if self.run.project.box.powered else ()
 
     def notes(self) -> tuple[str, ...]:
         """What was assumed, held at an edge, or not watched."""
         return (*self.run.rig.assumed, *self.run.not_watched, *self.trace.notes)
-
-
-def _arriving(project: Project) -> tuple[Lot, ...]:
-    return tuple(lot for lot in project.lots if np.any(np.greater(lot.arrives, 0.0)))
 
 
 def first_of(values: FloatArray) -> float | None:

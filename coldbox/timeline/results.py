@@ -124,7 +124,7 @@ class Outage(Record):
     start_clock: str
     horizon_h: float  # how long the run looked ahead
     asked_h: float
-    power_back_h: float | None  # None: not within the run, or never cooled
+    power_back_h: float | None  # may lie beyond the run; None: not told, or never cooled
     hold_h: float | None  # until the first limit is crossed; None: none within the run
     first: LimitResult | None
     limits: tuple[LimitResult, ...]

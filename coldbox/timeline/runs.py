@@ -74,8 +74,7 @@ def run(
     capacity_w: what the machine takes out while it runs; None: that of the project. warm: from a box as warm as its
     surroundings, with only goods that are put in warm. back_at_k: watches when the air first comes below its
     temperature and so much more. series: whether to keep all figures through time, or those of the limits alone.
-    go_on: told the share done, False
-    stops. Raises BadProject, OutOfValidity, Stopped.
+    go_on: told the share done, False stops. Raises BadProject, OutOfValidity, Stopped.
     """
     factors = Factors() if factors is None else factors
     draws = draws_of(project, factors)
@@ -83,7 +82,7 @@ def run(
     start_c = _warm_start(scene) if warm else scene.room.temperature_c
     made = rig(project, scene, course, draws=draws, factors=factors, start_c=start_c, stock="warm" if warm else "usual")
     hours = Hours(made, course, factors, _capacity(project, course, capacity_w))
-    state = begin(made, hours, course.start_s, normal_days=project.box.powered or warm)
+    state = begin(made, hours, course.start_s, normal_days=project.box.powered or warm, goods_before=not warm)
     looks = _Looks(made, course, series)
     reached = looks.coming_down(project.box.temperature + back_at_k) if back_at_k is not None else None
     plan = Plan(
@@ -107,7 +106,7 @@ def run(
         trace=trace,
         limits=tuple(one for one in looks.limits if one.watch not in {warm.watch for warm in still}),
         still_warm=still,
-        guidance=tuple(looks.guidance),
+        guidance=tuple(one for one in looks.guidance if _within_at_first(one, trace)),
         not_watched=tuple(looks.not_watched),
         reached=reached,
         signals=looks.known,
@@ -120,6 +119,12 @@ def _still_beyond(one: Watched, trace: Trace) -> bool:
         return False
     first, limit = float(trace.first[one.signal, 0]), middle(one.limit.limit_c)
     return first > limit if one.limit.side == "above" else first < limit
+
+
+def _within_at_first(one: Watched, trace: Trace) -> bool:
+    """Whether goods are cold enough when the run begins for guidance to count from there; what comes later is."""
+    later = one.body is not None and one.body.kind == "coming"
+    return later or float(trace.first[one.signal, 0]) <= middle(one.limit.limit_c)
 
 
 def _capacity(project: Project, course: Course, capacity_w: Number | None) -> Number | None:
@@ -178,7 +183,7 @@ class _Looks:
         for body in made.bodies:
             for limit in body.lot.limits:
                 self._limit(body, limit)
-            if _spoils(body) and self._within(body, "above", GUIDANCE_C):
+            if _spoils(body) and (body.kind == "intake" or self._within(body, "above", GUIDANCE_C)):
                 limit = Limit(side="above", limit_c=GUIDANCE_C, where="surface", allowed_s=GUIDANCE_S)
                 self.guidance.append(self._watched(body, limit))
         for limit in made.project.box.limits:

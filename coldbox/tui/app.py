@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import asyncio
+import gc
 import os
 import signal
 
@@ -125,6 +126,14 @@ class ColdboxApp(App[int]):
 
     def on_ready(self) -> None:
         """The first picture stands."""
+        if not self.is_headless:
+            self.call_after_refresh(self._first_picture)
+        self._after()
+
+    def _first_picture(self) -> None:
+        gc.enable()
+        gc.freeze()  # what was made until now stays: nobody needs to look through it again and again
+        self.shell.begin_hold()
         self._after()
 
     def _line_dropped(self) -> None:

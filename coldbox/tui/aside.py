@@ -12,6 +12,9 @@ if TYPE_CHECKING:
     from multiprocessing.connection import Connection
 
 
+NICE = 10  # keys come first, also on one core
+
+
 class Aside:
     """A running process and the pipe to it. `work(pipe, *args)` is what it does."""
 
@@ -43,6 +46,7 @@ def _quietly(work: Callable[..., None], pipe: Connection, *args: Any) -> None:
     import signal
 
     signal.signal(signal.SIGINT, signal.SIG_IGN)
+    os.nice(NICE)
     nowhere = os.open(os.devnull, os.O_WRONLY)
     os.dup2(nowhere, 1)
     os.dup2(nowhere, 2)

@@ -388,6 +388,12 @@ class Desk:
         self.accounts += 1
         self._ask_hold()
 
+    def begin_hold(self) -> None:
+        """Computes the hold time from now on, where it was opened without."""
+        if not self.hold.wanted:
+            self.hold.wanted = True
+            self._ask_hold()
+
     def _ask_hold(self) -> None:
         if self.project is not None:
             self.hold.ask(self.path, self.document)

@@ -63,7 +63,7 @@ _LIGHT = {
     "shade4": "color(124) on color(255)",
 }
 _TERMINAL = {
-    "text": "default on default",
+    "text": "none",
     "dim": "dim",
     "line": "dim",
     "title": "bold",
@@ -72,7 +72,7 @@ _TERMINAL = {
     "key": "bold",
     "cursor": "reverse",
     "field": "underline",
-    "typed": "default on default",
+    "typed": "none",
     "default": "dim",
     "library": "cyan",
     "fitted": "magenta",
@@ -92,7 +92,7 @@ _TERMINAL = {
     "shade4": "bold red",
 }
 _COLOURLESS = {
-    **dict.fromkeys(_TERMINAL, "default on default"),
+    **dict.fromkeys(_TERMINAL, "none"),
     "dim": "dim",
     "line": "dim",
     "title": "bold",

@@ -9,7 +9,6 @@ from pathlib import Path
 from typing import Any, Final
 
 from coldbox.errors import ColdboxError
-from coldbox.project.words import clean, nearest
 from coldbox.record import Record
 from coldbox.tui.keymap import ACTIONS, Keymap
 
@@ -46,6 +45,10 @@ def load_settings() -> Settings:
 
 
 def _settings(given: Mapping[str, Any], path: Path) -> Settings:
+    if not given:
+        return Settings(theme="terminal", keymap=Keymap(), path=str(path), problems=())
+    from coldbox.project.words import clean, nearest
+
     problems = []
     for word in given:
         if word not in ("theme", "keys"):
@@ -61,6 +64,8 @@ def _settings(given: Mapping[str, Any], path: Path) -> Settings:
 
 
 def _keys(given: Any, path: Path) -> tuple[dict[str, list[str]], list[str]]:
+    from coldbox.project.words import clean, nearest
+
     if not isinstance(given, dict):
         return {}, [f'{path}: keys is a table, such as keys = {{ save = ["w"] }}.']
     known = {action.id for action in ACTIONS}

@@ -7,15 +7,18 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from coldbox.errors import ColdboxError
 from coldbox.tui import status
-from coldbox.tui.desk import Desk
 from coldbox.tui.frame import Frame, wrapped
 from coldbox.tui.keymap import PAGES
 from coldbox.tui.layer import Area, Layer
 from coldbox.tui.settings import THEMES, Settings, load_settings
-from coldbox.tui.things import LISTS, Thing, thing, things
+
+if TYPE_CHECKING:  # what computes is imported when there is a project: the first page needs none of it
+    from coldbox.tui.desk import Desk
+    from coldbox.tui.things import Thing
 
 BEGIN_NO_VALUE = ("help", "palette")  # their usual keys, ? and :, begin no value
 NEEDED = (40, 12)  # columns and lines below which only the answer is shown
@@ -82,10 +85,17 @@ class Shell:
         if file is None:
             shell.go("first")
         else:
+            shell.with_hold = False
             shell.open(Path(file))
         if settings.problems:
             shell.say(settings.problems[0], "warn")
         return shell
+
+    def begin_hold(self) -> None:
+        """The first picture stands: now there is time for what takes longer."""
+        self.with_hold = True
+        if self.desk is not None:
+            self.desk.begin_hold()
 
     def key_name(self, action: str) -> str:
         """The first key of an action, for a line that has no room for all."""
@@ -251,11 +261,16 @@ class Shell:
 
     def things(self) -> tuple[Thing, ...]:
         """Everything that has fields."""
+        from coldbox.tui.things import things
+
         return () if self.desk is None else things(self.desk.document)
+
+    def _thing(self, path: str) -> Thing | None:
+        return next((one for one in self.things() if one.path == path), None)
 
     def described(self, path: str) -> str:
         """A thing in words: what it is, where it is."""
-        found = None if self.desk is None else thing(self.desk.document, path)
+        found = self._thing(path)
         if found is None:
             return path
         kind = KINDS.get(found.table, found.table.removesuffix("s"))
@@ -272,7 +287,7 @@ class Shell:
         """The sheet of a thing."""
         from coldbox.tui.sheets.edit import EditSheet
 
-        found = None if self.desk is None else thing(self.desk.document, path)
+        found = self._thing(path)
         if found is None:
             self.say("There are no fields here.")
         else:
@@ -302,6 +317,8 @@ class Shell:
         desk = self.desk
         if desk is None or self._reads_only():
             return
+        from coldbox.tui.things import LISTS
+
         if path.partition(".")[0] not in LISTS:
             self.say(f"The {self.described(path)} stays: only what stands on the box or in it can be doubled or go.")
         elif action == "duplicate":

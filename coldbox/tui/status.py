@@ -5,7 +5,6 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from coldbox.tui.frame import Frame
-from coldbox.units import show
 
 if TYPE_CHECKING:
     from coldbox.tui.desk import Desk
@@ -27,6 +26,8 @@ def head(frame: Frame, shell: Shell) -> None:
         state = "read only"
     shown = f"{desk.system}  {state}  {help_word}"
     begin = frame.right(right, 0, shown, "head")
+    from coldbox.units import show
+
     project = desk.project
     name = f" {desk.name}"
     if project is not None:
@@ -68,6 +69,8 @@ def needs(desk: Desk) -> str:
     """Required capacity in words."""
     if desk.load is None:
         return "needs ? (nothing computes yet)"
+    from coldbox.units import show
+
     return f"needs {show(desk.load.required_capacity_w, 'power', desk.system, 3)}"
 
 

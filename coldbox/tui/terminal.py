@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import os
 import sys
 from collections.abc import Mapping
@@ -63,6 +64,7 @@ def run(file: str | None, folder: Path) -> int:
             is restored and the work kept
     """
     check(os.environ, stdin=sys.stdin.isatty(), stderr=sys.stderr.isatty())
+    gc.disable()  # until the first picture stands: there is no rubbish yet, only much that is made
     stderr = sys.__stderr__
     found = abilities(os.environ, stderr.encoding if stderr else None)
     # Read once, when the toolkit is imported: its timers run in step with the frames, and its keyboard protocol is not

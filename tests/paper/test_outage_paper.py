@@ -12,6 +12,7 @@ import runs_by_hand as by_hand
 from coldbox.paper import markdown, outage, text, trip
 from coldbox.paper.document import Document
 from coldbox.paper.sure import eight_in_ten, percent, rough
+from coldbox.scene.finding import Finding
 from coldbox.spread.percentiles import Chance, percentiles
 from coldbox.timeline.results import Outage, Trip
 
@@ -95,16 +96,29 @@ def test_dangers_stand_in_full_above_everything() -> None:
     assert any("6 100 ppm in cab" in line for line in page)
 
 
+def test_what_is_not_counted_stands_beside_the_answer() -> None:
+    text = "not counted, beyond a limit when this begins: cod, today's. Look there first"
+    warm = Finding(level="caution", id="still-warm", text=text, rule="", path="lots.cod")
+    page = lines_of(by_hand.outage(findings=(warm,)))
+    assert f"  {text}" in page[:5] and not any("see below" in line for line in page)
+
+
 def test_pulldown_and_recovery() -> None:
     page = lines_of(by_hand.pulldown())
-    assert page[0] == "Cold 9 h 10 min after power on: at 23:10"
+    assert page[0] == "Cold after 9 h 10 min: 23:10"
+    assert page[1] == "  last: the air, within 1 K of -20 °C from 23:10"  # the cod was at 23:00
+    page = lines_of(by_hand.pulldown(reached_h=9.0, reached_clock=by_hand.clock(9.0)))
     assert page[1] == "  last: cod surface, within -12 °C from 23:00"
+    page = lines_of(by_hand.pulldown(facts={"machine_w": 800.0, "day_puts_in_w": 500.0}))
+    assert page[3] == "  it can stay cold: the machine takes out 800 W, a day puts in 500 W"
+    page = lines_of(by_hand.pulldown(facts={"machine_w": 400.0, "day_puts_in_w": 500.0}))
+    assert page[3] == "  it cannot stay cold: a day puts in 500 W, the machine takes out 400 W"
     warm = by_hand.limit(start_c=12.0, end_c=-3.0, worst_c=12.0, back_at_h=None)
     page = lines_of(by_hand.pulldown(limits=(warm,), reached_h=None, reached_clock=None))
     assert page[0] == "Not cold within 48 h, as far as it was looked at"
     assert page[1] == "  not back within its limit at the end: cod surface at -3 °C"
     page = lines_of(by_hand.pulldown(kind="recovery"))
-    assert page[0].startswith("All back 9 h 10 min after the power went")
+    assert page[0] == "All back after 9 h 10 min: 23:10"
 
 
 def test_a_trip_is_told_leg_by_leg() -> None:

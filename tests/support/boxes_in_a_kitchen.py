@@ -7,7 +7,7 @@ from typing import Any
 
 import coldbox
 from coldbox.spread import hold
-from coldbox.timeline.results import Outage
+from coldbox.timeline.results import Kind, Outage
 
 USUAL: dict[str, Any] = {
     "length": "1.2 m", "width": "1.0 m", "height": "1.1 m", "temperature": "-18 °C", "around": "24 °C", "wall": "80 mm",
@@ -71,11 +71,11 @@ def _listed(words: list[str]) -> str:
     return "[" + ", ".join(f'"{word}"' for word in words) + "]"
 
 
-def outage(folder: Path, *, more: str = "", **changes: Any) -> Outage:
-    """An outage of such a box; `more` is appended to its file."""
+def outage(folder: Path, *, more: str = "", kind: Kind = "outage", **changes: Any) -> Outage:
+    """An outage of such a box, or a run of another kind; `more` is appended to its file."""
     file = folder / "box.toml"
     file.write_text(box(**changes) + more, encoding="utf-8")
-    found = hold.run(coldbox.open(file), count=0)
+    found = hold.run(coldbox.open(file), kind, count=0)
     assert found.heat_balance_error < 1e-6
     return found
 

@@ -34,7 +34,9 @@ def sent(key: str) -> bytes:
 class Terminal:
     """A process in a pseudo-terminal of 80 by 24."""
 
-    def __init__(self, arguments: list[str], folder: Path, environment: dict[str, str], size: tuple[int, int] = (80, 24)):
+    def __init__(
+        self, arguments: list[str], folder: Path, environment: dict[str, str], size: tuple[int, int] = (80, 24)
+    ):
         inherited = {key: os.environ[key] for key in ("PATH", "HOME", "OPENBLAS_NUM_THREADS") if key in os.environ}
         self.environment = {
             **inherited, "PYTHONPATH": str(ROOT), "TERM": "xterm-256color", "LANG": "C.UTF-8", "ESCDELAY": "25",

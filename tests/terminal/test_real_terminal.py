@@ -33,7 +33,7 @@ def tour(tmp_path_factory: pytest.TempPathFactory) -> tuple[list[str], str]:
 
 
 @pytest.fixture
-def started(tmp_path: Path) -> Iterator[list[Terminal]]:
+def started() -> Iterator[list[Terminal]]:
     terminals: list[Terminal] = []
     yield terminals
     for terminal in terminals:

@@ -106,6 +106,21 @@ def test_events_outside_the_run_do_nothing(tmp_path: Path) -> None:
     assert np.array_equal(later.trace.air_c, plain.trace.air_c)
 
 
+@pytest.mark.parametrize("at", ["14:00", "0 h", "24 h", "day 2 14:00"])
+def test_an_event_at_either_end(tmp_path: Path, at: str) -> None:
+    lines = events(
+        f'at = "{at}", what = "door open", door = "lid", lasts = "10 min"',
+        f'at = "{at}", what = "goods out", lot = "food", mass = "150 kg"',
+    )
+    finite(outage(tmp_path, more=lines + DOOR, horizon="24 h"))
+
+
+def test_a_clock_before_the_start_is_the_next_day(tmp_path: Path) -> None:
+    lines = events('at = "13:00", what = "door open", door = "lid", lasts = "10 min"')
+    found = finite(outage(tmp_path, more=lines + DOOR, horizon="24 h"))
+    assert [one.at_h for one in found.events if one.text.startswith("lid")] == [23.0]
+
+
 def test_dry_ice_spent_midway(tmp_path: Path) -> None:
     more = (
         DOOR

@@ -81,7 +81,20 @@ def test_the_whole_tour_goes_through_the_toolkit_as_it_goes_without(tmp_path: Pa
 
 def test_what_is_painted_is_what_the_shell_draws(freezer: Shell) -> None:
     async def play(app: ColdboxApp, pilot: Pilot[int]) -> None:
-        for key in ("right", "2", "down", "3", "1", "enter", "down", "4", "escape", "question_mark", "escape", "escape"):
+        for key in (
+            "right",
+            "2",
+            "down",
+            "3",
+            "1",
+            "enter",
+            "down",
+            "4",
+            "escape",
+            "question_mark",
+            "escape",
+            "escape",
+        ):
             await pilot.press(key)
             assert painted(app) == app.shell.frame(80, 24).lines()
 

@@ -180,7 +180,8 @@ class _Unfolded:
             canvas.text(x + width(said.watts) + 1, place.y + 1, said.flux, "dim", room - width(said.watts) - 1)
         lines = [flux, said.behind] if flux else [said.behind]
         rows = place.height - 2
-        for row, text in enumerate(line for line in lines if line):
+        for row, line in enumerate(line for line in lines if line):
+            text = line if width(line) <= room else line.partition(" ")[0]  # rather no unit than half of one
             if row + 2 <= rows:
                 canvas.text(x, place.y + 2 + row, text, "dim", room)
         first = place.y + 2 + len([line for line in lines if line])

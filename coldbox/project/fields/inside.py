@@ -79,7 +79,8 @@ FIELDS = (
           default_reason="what the load asks for"),
     Field(_MACHINE, "band", "difference", "band", "Between off and on of the thermostat.", 0.1, 20.0, default="2 K",
           default_reason="a usual thermostat", source=TRADE),
-    Field(_MACHINE, "fans", "count", "fans", "Evaporator fans in the room. They stop while it defrosts.", 0, 10_000,
+    Field(_MACHINE, "fans", "count", "fans", "Evaporator fans in the room. They stop while it "
+          "defrosts, but not for a defrost by the room's own air.", 0, 10_000,
           default="0", default_reason="fan_share counts until they are known", source=TRADE),
     Field(_MACHINE, "fan_power", "power", "fan power", "Power of one fan; required with fans.", 0.0, 1e6,
           default_reason="required with fans"),

@@ -77,18 +77,11 @@ class Page(Layer):
         frame.cursor = (area.x + 2, area.y + 1)
 
     def _mark(self, frame: Frame) -> None:
-        """The place under the cursor, reversed: a face by its border, anything smaller as a whole."""
+        """The place under the cursor: its uppermost line reversed, which costs the line to the terminal least."""
         if self.at not in self._places:
             return
-        x, y, width, height = self._places[self.at]
-        if height <= 1:
-            frame.restyle(x, y, width, "cursor")
-        else:
-            for row in (y, y + height - 1):
-                frame.restyle(x, row, width, "cursor")
-            for row in range(y, y + height):
-                frame.restyle(x, row, 1, "cursor")
-                frame.restyle(x + width - 1, row, 1, "cursor")
+        x, y, width, _ = self._places[self.at]
+        frame.restyle(x, y, width, "cursor")
         frame.cursor = (x, y)
 
     def _account(self, frame: Frame, area: Area) -> None:

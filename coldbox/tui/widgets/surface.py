@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from rich.segment import Segment
-from textual.geometry import Region
 from textual.strip import Strip
 from textual.widget import Widget
 
@@ -23,24 +22,36 @@ class Surface(Widget):
         self.look = look
         self.refreshed = 0  # lines repainted so far, for the tests of thrift
         self._rows: list[Row] = []
+        self._width = 0
+        self._painted = False  # whether the toolkit has painted this surface
+        self._cursor = (0, 0)
 
     def show(self, frame: Frame) -> None:
-        """Repaint what differs from the frame shown before."""
+        """Paint what differs from the frame shown before.
+
+        The toolkit repaints a line from its beginning; over a slow line that is ten times what has changed. So only
+        the first picture of each size goes its way, and what follows straight to the terminal.
+        """
         rows, before = frame.rows(), self._rows
         self._rows = rows
-        if len(rows) != len(before) or not self.is_mounted:
+        driver = self.app._driver
+        if len(rows) != len(before) or frame.width != self._width or not self._painted or driver is None:
+            self._width = frame.width
             self.refreshed += len(rows)
             self.refresh()
             return
-        changed = [
-            Region(begin, y, end - begin, 1)
-            for y, (row, old) in enumerate(zip(rows, before, strict=True))
-            if row != old
-            for begin, end in _differing(row, old)
-        ]
-        if changed:
-            self.refreshed += len({region.y for region in changed})
-            self.refresh(*changed)
+        console, written = self.app.console, []
+        for y, (row, old) in enumerate(zip(rows, before, strict=True)):
+            if row != old:
+                self.refreshed += 1
+                strip = self._strip(row)
+                for begin, end in _differing(row, old):
+                    written.append(f"\x1b[{y + 1};{begin + 1}H{strip.crop(begin, end).render(console)}")
+        x, y = self.app.cursor_position
+        if written or (x, y) != self._cursor:
+            self._cursor = (x, y)
+            driver.write(f"{''.join(written)}\x1b[{y + 1};{x + 1}H")
+            driver.flush()
 
     def wear(self, look: Look) -> None:
         """Another theme."""
@@ -51,8 +62,12 @@ class Surface(Widget):
         """A line of the last frame."""
         if y >= len(self._rows):
             return Strip.blank(self.size.width, self.look.style("text"))
+        self._painted = True
+        return self._strip(self._rows[y])
+
+    def _strip(self, row: Row) -> Strip:
         style = self.look.style
-        return Strip([Segment(run.text, style(run.style)) for run in self._rows[y]])
+        return Strip([Segment(run.text, style(run.style)) for run in row])
 
 
 def _differing(row: Row, old: Row) -> list[tuple[int, int]]:
