@@ -24,12 +24,12 @@ COLDBOX = ["-m", "coldbox"]
 
 
 @pytest.fixture(scope="module")
-def tour(tmp_path_factory: pytest.TempPathFactory) -> tuple[list[str], str]:
-    """The keys of the tour, and the file they make."""
+def tour(tmp_path_factory: pytest.TempPathFactory) -> tuple[list[str], str, list[str]]:
+    """The keys of the tour, the file they make, and the picture at their end."""
     folder = tmp_path_factory.mktemp("plain")
     driven = Driven(folder)
     build(driven, SI, system="SI")
-    return driven.keys, (folder / "quay.toml").read_text()
+    return driven.keys, (folder / "quay.toml").read_text(), driven.lines()
 
 
 @pytest.fixture
@@ -47,9 +47,9 @@ def freezer(folder: Path) -> str:
 
 @pytest.mark.parametrize("place", PLACES)
 def test_the_tour_in_a_real_terminal(
-    place: str, tour: tuple[list[str], str], tmp_path: Path, started: list[Terminal]
+    place: str, tour: tuple[list[str], str, list[str]], tmp_path: Path, started: list[Terminal]
 ) -> None:
-    keys, file = tour
+    keys, file, picture = tour
     terminal = Terminal(COLDBOX, tmp_path, PLACES[place])
     started.append(terminal)
     terminal.until("no project in this folder")
@@ -58,6 +58,8 @@ def test_the_tour_in_a_real_terminal(
     assert (tmp_path / "quay.toml").read_text() == file
     shown = terminal.text
     assert "needs" in shown and "ceiling" in shown and "quay" in shown
+    if place in ("xterm", "tmux", "no colour"):
+        assert terminal.lines[1:-3] == picture[1:-3], "what was painted piece by piece is the whole picture"
     if place == "no UTF-8":
         assert terminal.painted.isascii()
     if place == "console":
