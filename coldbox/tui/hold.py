@@ -68,6 +68,8 @@ class Hold:
             self._ended()
 
     def _ended(self) -> None:
+        if self._aside is not None:
+            self._aside.end()
         self._aside, self._waiting, self._next = None, False, None
         self.trouble = "the hold time's process has ended"
 
@@ -154,8 +156,8 @@ def _answer(pipe: Connection, asked: _Asked) -> None:
 
         for count in (0, DRAWS):
             pipe.send((number, "outage", hold.run(project, count=count, go_on=go_on)))
-            if project.trip is not None:
-                pipe.send((number, "trip", hold.run(project, "trip", count=count, go_on=go_on)))
+            trip = None if project.trip is None else hold.run(project, "trip", count=count, go_on=go_on)
+            pipe.send((number, "trip", trip))
     except Stopped:
         raise
     except ColdboxError as error:

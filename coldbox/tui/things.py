@@ -66,6 +66,11 @@ def addable(document: Mapping[str, Any], one: Thing) -> tuple[tuple[str, str], .
     )
 
 
+def doubles(one: Thing) -> bool:
+    """Whether there may be several of its kind: it can be doubled, and it can go."""
+    return one.table in ("constructions", "neighbours") or TABLES[one.table].form == "list"
+
+
 def _parts(document: Mapping[str, Any]) -> dict[str, list[Thing]]:
     """What stands in a thing, by the key path of the thing at the top."""
     found: dict[str, list[Thing]] = {}
