@@ -75,7 +75,7 @@ class Keymap:
         self.actions = tuple(
             action._replace(keys=tuple(changed[action.id])) if action.id in changed else action for action in ACTIONS
         )
-        own_last = sorted(reversed(self.actions), key=lambda action: action.id in changed)
+        own_last = sorted(self.actions, key=lambda action: action.id in changed)
         self._by_key = {(action.where, key): action.id for action in own_last for key in action.keys}
 
     def action(self, where: str, key: str) -> str | None:

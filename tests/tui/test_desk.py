@@ -10,7 +10,7 @@ import pytest
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 
-from coldbox.errors import ColdboxError
+from coldbox.errors import BadProject, ColdboxError
 from coldbox.project import fresh, journal, store
 from coldbox.project.fields import FIELDS
 from coldbox.project.origins import declaration
@@ -264,3 +264,27 @@ def test_nothing_typed_is_lost_or_raises(data: st.DataObject, tmp_path: Path) ->
     while desk.redo():
         pass
     assert desk.document == last
+
+
+def test_who_takes_the_file_over_is_told_to_the_first(tmp_path: Path) -> None:
+    desk = desk_on(tmp_path)
+    assert desk.lost() == "" and not desk.read_only
+    second = Desk.open(desk.path, hold=False)
+    second.take_over()
+    assert "taken over by" in desk.lost() and desk.read_only
+    with pytest.raises(ColdboxError, match="read only"):
+        desk.save()
+    desk.close()
+    assert second.lost() == "" and not second.read_only, "the first took only its own word away"
+    second.close()
+
+
+def test_a_file_that_broke_meanwhile_is_refused_and_the_work_stays(tmp_path: Path) -> None:
+    desk = desk_on(tmp_path)
+    desk.set("box.temperature", "-22 °C")
+    before = desk.document
+    Path(desk.path).write_text("[box\n", encoding="utf-8")
+    with pytest.raises(BadProject):
+        desk.reload()
+    assert desk.document is before and desk.dirty and desk.moved_on()
+    desk.close()
