@@ -12,6 +12,7 @@ from hypothesis import strategies as st
 from coldbox.errors import BadProject
 from coldbox.project import codec
 from coldbox.project.fields import BY_KEY, FIELDS, Field
+from coldbox.project.raw import Entered
 from coldbox.project.values import Wrong, from_text
 from coldbox.tui import sheet, steps, things
 from coldbox.tui.desk import Desk, Refusal, Understood
@@ -178,6 +179,9 @@ def test_a_step_down_is_the_way_back_from_a_step_up(field: Field, text: str) -> 
     [
         ("box.length", "5' 6\"", 1, "68 in"),
         ("box.length", "3 1/2 in", 1, "3.6 in"),
+        ("box.length", "40 mm", -1, "39 mm"),
+        ("box.length", "39 mm", 2, "42 mm"),
+        ("box.length", "100 mm", -1, "98 mm"),
         ("lots.stored", "1 200 kg", 1, "1250 kg"),
         ("constructions.r_value", "R-25", 1, "R-26"),
         ("box.bearing", "SSW", 1, "SW"),
@@ -279,3 +283,19 @@ def test_one_key_reads_one_value_and_makes_one_account(tmp_path: Path, monkeypat
     desk.undo()
     assert read == ["box.temperature"]
     assert desk.accounts == before + 2
+
+
+def test_what_was_read_of_one_field_is_not_taken_for_another() -> None:
+    known: dict[codec.Known, Entered] = {}
+    document = {"format": 1, "box": {"length": "70 m", "width": "70 m", "height": "70 m", "temperature": "3 °C"}}
+    for _ in range(2):
+        _, problems = codec.of_document(document, "box.toml", known)
+        assert [one.path for one in problems] == ["box.height"], "70 m is too high, and not too long"
+
+
+def test_an_edit_after_an_undo_ends_the_way_forth(tmp_path: Path) -> None:
+    desk = on(tmp_path, TEXTS["greens-hall"])
+    desk.set("box.temperature", "3 °C")
+    desk.undo()
+    desk.set("box.temperature", "5 °C")
+    assert not desk.redo() and desk.shown("box.temperature") == "5 °C"
