@@ -16,6 +16,8 @@ from coldbox.project.values import System, Wrong, from_text, from_toml
 from coldbox.project.words import clean, fault_of_name
 
 MOST_PROBLEMS = 300  # told; more would not be read
+MOST_KNOWN = 5000  # values of a document kept for the next reading
+Known = tuple[str, str, str]  # table, key and text of a value
 _MARK = "\ufeff"  # byte-order mark
 
 
@@ -53,13 +55,16 @@ def read(text: str, file: str, options: Mapping[str, str] = {}) -> tuple[Raw, li
     return Raw(file=file, text=text, blocks=blocks), problems
 
 
-def of_document(document: Mapping[str, Any], file: str) -> tuple[Raw, list[Problem]]:
+def of_document(
+    document: Mapping[str, Any], file: str, known: dict[Known, Entered] | None = None
+) -> tuple[Raw, list[Problem]]:
     """The same of a document that is edited and has no text yet: its problems tell no lines.
 
     document  as tomllib gives it
     file      its name, for the problems
+    known     values read before, by field and text; those that are read now are put in. An edit changes one of them
     """
-    walk = _Walk(file, LineMap(""), [], "IP" if document.get("units") == "IP" else "SI")
+    walk = _Walk(file, LineMap(""), [], "IP" if document.get("units") == "IP" else "SI", known)
     blocks = walk.document(dict(document))
     return Raw(file=file, text="", blocks=blocks), walk.problems
 
@@ -67,10 +72,18 @@ def of_document(document: Mapping[str, Any], file: str) -> tuple[Raw, list[Probl
 class _Walk:
     """One pass over a document. A `key` is the path in the document, a `path` the one printed."""
 
-    __slots__ = ("file", "lines", "problems", "system", "untold")
+    __slots__ = ("file", "known", "lines", "problems", "system", "untold")
 
-    def __init__(self, file: str, lines: LineMap, problems: list[Problem], system: System) -> None:
+    def __init__(
+        self,
+        file: str,
+        lines: LineMap,
+        problems: list[Problem],
+        system: System,
+        known: dict[Known, Entered] | None = None,
+    ) -> None:
         self.file, self.lines, self.problems, self.system = file, lines, problems, system
+        self.known = known  # only of documents without a text: a value of a text knows its line
         self.untold = 0
 
     def full(self) -> bool:
@@ -184,11 +197,19 @@ class _Walk:
         """One value; None, and a problem, when it will not do."""
         if isinstance(value, Option):
             return self.option(field, value)
+        seen = (field.table, field.key, value) if isinstance(value, str) else None
+        if self.known is not None and seen is not None and seen in self.known:
+            return self.known[seen]
         try:
-            return from_toml(field, value, self.typed(value, key), self.lines.line(key), self.system)
+            entered = from_toml(field, value, self.typed(value, key), self.lines.line(key), self.system)
         except Wrong as wrong:
             self.problem(str(wrong), path, key)
             return None
+        if self.known is not None and seen is not None:
+            if len(self.known) > MOST_KNOWN:
+                self.known.clear()
+            self.known[seen] = entered
+        return entered
 
     def typed(self, value: Any, key: Key) -> str:
         """A value as it stands in the file; only numbers, dates and yes/no are asked for."""

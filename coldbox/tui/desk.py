@@ -15,29 +15,42 @@ from coldbox.account.entry import Load
 from coldbox.account.load import load
 from coldbox.errors import BadProject, ColdboxError, Problem
 from coldbox.project import codec, journal, lock, shop, store
-from coldbox.project.fields import TABLES
+from coldbox.project.linemap import refuse_deep_keys
 from coldbox.project.model import Project
+from coldbox.project.raw import Entered
 from coldbox.project.resolve import resolve
 from coldbox.project.revise import revised
-from coldbox.project.setting import named
 from coldbox.record import Record
 from coldbox.tui import document as documents
 from coldbox.tui.document import Document, Refused, System
 from coldbox.tui.hold import Hold
+from coldbox.tui.least import called
+from coldbox.tui.sheet import choices, library_value
 from coldbox.tui.steps import stepped
 from coldbox.tui.understood import understood
 
 
 class Understood(Record):
-    """What was made of a text: in the units of the screen, and how the other system has it."""
+    """What was made of a text, in the units of the screen; `path`, where it now stands: a thing may be called anew."""
 
     text: str
+    path: str = ""
 
 
 class Refusal(Record):
     """Why a text will not do, and what would."""
 
     text: str
+
+
+def _document_of(text: str, path: str) -> Document:
+    """The TOML data of a file. Raises BadProject with what is wrong where it is none."""
+    try:
+        refuse_deep_keys(text)
+        return tomllib.loads(text.removeprefix("\ufeff"))
+    except (ValueError, RecursionError):
+        _, problems = codec.read(text, path)
+        raise BadProject(problems) from None
 
 
 def _after(hours: float) -> str:
@@ -67,7 +80,7 @@ class Desk:
         self._lock: lock.Lock | None = None
         self._done: list[tuple[str, Document]] = []
         self._undone: list[tuple[str, Document]] = []
-        self.document: Document = tomllib.loads(text)
+        self.document: Document = _document_of(text, path)
         self._saved = self.document
         self._offered: journal.Journal | None = None
         self.problems: Sequence[Problem] = ()
@@ -76,6 +89,8 @@ class Desk:
         self.accounts = 0  # how often an account was made: tests bound the work of a key
         self.system: System = "IP" if self.document.get("units") == "IP" else "SI"
         self.library = shop.library(path)
+        self.shelf = shop.library(path)  # to pick from: what is wrong in a row that is not used is no problem
+        self._known: dict[codec.Known, Entered] = {}
         self.hold = Hold(wanted=hold)
         self._trial: _Trial | None = None
         self._compute()
@@ -89,11 +104,7 @@ class Desk:
         Raises ColdboxError.
         """
         text, stamp = store.read(path)
-        try:
-            desk = cls(path, text, stamp, hold=hold)
-        except tomllib.TOMLDecodeError:
-            _, problems = codec.read(text, path)
-            raise BadProject(problems) from None
+        desk = cls(path, text, stamp, hold=hold)
         taken = lock.take(path)
         if isinstance(taken, lock.Lock):
             desk._lock = taken
@@ -175,14 +186,22 @@ class Desk:
         self._text, self._saved, self._stamp = made.text, self.document, stamp
         self._ask_hold()
 
+    def lost(self) -> str:
+        """Who has taken the file over, "" when nobody has; it is then open to read only. To be asked now and then."""
+        by = None if self._lock is None else self._lock.lost()
+        if by is None:
+            return ""
+        self.read_only, self.held_by, self._lock = True, f"taken over by {by}", None
+        return self.held_by
+
     def moved_on(self) -> bool:
         """Whether the file is another than the one that was opened or saved last."""
         return store.moved_on(self.path, self._stamp)
 
     def reload(self) -> None:
-        """Take what the file says now; what was on the desk can be had back by undo."""
+        """Take what the file says now; what was on the desk can be had back by undo. Raises ColdboxError."""
         text, stamp = store.read(self.path)
-        document = tomllib.loads(text)
+        document = _document_of(text, self.path)
         self._text, self._stamp = text, stamp
         self._change("what the file said", document)
         self._saved = self.document
@@ -212,7 +231,7 @@ class Desk:
         )
         self.project, self.load = made, account
         self.hold.stale = self.hold.outage is not None
-        return Understood(text=understood(path, documents.value_at(changed, path), self.system) or text.strip())
+        return self._understood(path, text, self.document, changed)
 
     def drop_trial(self) -> None:
         """What held before somebody began to type holds again."""
@@ -231,8 +250,7 @@ class Desk:
             self.document = trial.document
             self.problems, self.project, self.load = (), trial.project, trial.load
             self._ask_hold()
-            said = understood(path, documents.value_at(self.document, path), self.system)
-            return Understood(text=said or text.strip())
+            return self._understood(path, text, self._done[-1][1], self.document)
         try:
             changed = documents.with_value(self.document, path, text, self.system)
         except Refused as refused:
@@ -241,13 +259,21 @@ class Desk:
         mine = [] if isinstance(made, Project) else [one.text for one in made if one.path == path]
         if mine:
             return Refusal(text=mine[0])
+        before = self.document
         self._change(f"{path} = {text.strip()}", changed, made)
-        return Understood(text=understood(path, documents.value_at(self.document, path), self.system) or text.strip())
+        return self._understood(path, text, before, changed)
+
+    def _understood(self, path: str, text: str, before: Document, after: Document) -> Understood:
+        """What was made of a text under a path; of a name, where its thing stands from now on."""
+        moved = documents.moved(before, after, path)
+        said = understood(moved, documents.value_at(after, moved), self.system)
+        return Understood(text=said or text.strip(), path=moved)
 
     def raised(self, path: str, steps: int) -> Understood | Refusal:
         """A value some steps up (or down), in the unit it is typed in."""
         try:
-            text = stepped(path, self.shown(path), steps, self.system)
+            field = documents.field_at(self.document, path)
+            text = stepped(field, self.shown(path), steps, self.system, choices(self, field))
         except Refused as refused:
             return Refusal(text=str(refused))
         return self.set(path, text)
@@ -258,21 +284,36 @@ class Desk:
         if value is not None:
             return documents.shown(value)
         origin = None if self.project is None else self.project.origins.get(path)
-        return "" if origin is None else origin.text
+        return "" if origin is None or origin.kind in ("typed", "option") else origin.text
+
+    def back(self, path: str) -> str:
+        """A value back to what the shop library has, or to its default; what holds then. Raises Refused."""
+        theirs = library_value(self, path)
+        if theirs is not None and theirs != documents.value_at(self.document, path):
+            self._change(f"{path} as the shop library has it", documents.with_data(self.document, path, theirs))
+        elif theirs is None:
+            self.remove(path)
+        return self.shown(path)
 
     def add(self, table: str, face: str = "") -> str:
-        """A new thing with the least that computes; its key path."""
+        """A new thing with the least that computes; its key path. Raises Refused.
+
+        table: a list ("doors"), a table of names ("constructions"), or a list in a thing ("lots.cod.limits").
+        face: the one it stands on, where it can stand on one.
+        """
         changed, path = documents.with_new(self.document, table, face)
-        self._change(f"new {path}", changed)
+        made = self._made(changed)
+        if face and not isinstance(made, Project) and not self.problems:  # a door in a floor on the ground, for one
+            changed, path = documents.with_new(self.document, table)
+            made = self._made(changed)
+        self._change(f"new {path}", changed, made)
         return path
 
     def open_door(self, hours: float) -> str:
         """A door that stands open for ten minutes, so many hours into the outage; which one. Raises Refused."""
-        doors = self.document.get("doors", [])
-        names = named(TABLES["doors"], doors) if isinstance(doors, list) else []
-        if not any(names):
+        name = next(iter(called(self.document, "doors")), "")
+        if not name:
             raise Refused("There is no door with a name to open.")
-        name = next(name for name in names if name)
         event = {"at": _after(hours), "what": "door open", "door": name, "lasts": "10 min"}
         self._change(f"{name} open at {_after(hours)}", documents.with_event(self.document, event))
         return name
@@ -304,6 +345,7 @@ class Desk:
         return self._step(self._undone, self._done)
 
     def _step(self, here: list[tuple[str, Document]], there: list[tuple[str, Document]]) -> str:
+        self.drop_trial()
         if not here:
             return ""
         what, before = here.pop()
@@ -313,6 +355,9 @@ class Desk:
         return what
 
     def _change(self, what: str, changed: Document, made: Project | Sequence[Problem] | None = None) -> None:
+        self.drop_trial()
+        if changed is self.document:
+            return
         self._done.append((what, self.document))
         self._undone.clear()
         self.document = changed
@@ -323,7 +368,7 @@ class Desk:
     def _made(self, document: Document) -> Project | Sequence[Problem]:
         """The project of a document, or what is wrong in it."""
         try:
-            raw, problems = codec.of_document(document, self.path)
+            raw, problems = codec.of_document(document, self.path, self._known)
             return resolve(raw, problems, self.library)
         except BadProject as bad:
             return bad.problems

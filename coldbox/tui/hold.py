@@ -32,6 +32,9 @@ class Hold:
         self._number = 0
         self._waiting = False
         self._aside: Aside | None = None
+        self._next: _Asked | None = None  # to be sent as soon as the process listens
+        self._listens = False
+        self._told_to_stop = False
 
     @property
     def busy(self) -> bool:
@@ -40,29 +43,51 @@ class Hold:
 
     def ask(self, path: str, document: dict[str, Any]) -> None:
         """A new state of the project: what is shown is stale until its answer has come."""
+        self.tick()
         self._number += 1
         self.stale = self.outage is not None
         if not self.wanted:
             return
+        self._next, self._waiting = (self._number, path, document), True
         if self._aside is None or not self._aside.alive:
-            self._aside = Aside(work)
+            self._aside, self._listens, self._told_to_stop = Aside(work), False, False
+        self._send()
+
+    def _send(self) -> None:
+        """The newest question, once the process listens; else a word that it may stop. No key waits for a full pipe."""
+        if self._aside is None or self._next is None:
+            return
         try:
-            self._aside.pipe.send((self._number, path, document))
-            self._waiting = True
+            if self._listens:
+                self._aside.pipe.send(self._next)
+                self._next, self._listens = None, False
+            elif not self._told_to_stop:
+                self._aside.pipe.send(None)
+                self._told_to_stop = True
         except OSError:
-            self._aside, self._waiting = None, False
-            self.trouble = "the hold time's process has ended"
+            self._ended()
+
+    def _ended(self) -> None:
+        if self._aside is not None:
+            self._aside.end()
+        self._aside, self._waiting, self._next = None, False, None
+        self.trouble = "the hold time's process has ended"
 
     def tick(self) -> bool:
         """Takes in what has come; whether there was anything."""
         news = False
-        while self._aside is not None and self._waiting and self._aside.pipe.poll():
+        while self._aside is not None:
             try:
+                if not self._aside.pipe.poll():
+                    break
                 number, what, found = self._aside.pipe.recv()
             except (EOFError, OSError):
-                self._waiting, self.trouble = False, "the hold time's process has ended"
-                self._aside = None
+                self._ended()
                 return True
+            if what == "listens":
+                self._listens, self._told_to_stop = True, False
+                self._send()
+                continue
             if number != self._number:
                 continue
             news = True
@@ -101,19 +126,18 @@ class Hold:
         """Ends the process at once."""
         if self._aside is not None:
             self._aside.end()
-        self._aside, self._waiting = None, False
+        self._aside, self._waiting, self._next = None, False, None
 
 
 def work(pipe: Connection) -> None:
     """What the process does: always the newest question, first without draws, then with them."""
-    asked = pipe.recv()
     while True:
-        while pipe.poll():
+        pipe.send((0, "listens", None))
+        asked = pipe.recv()
+        while asked is None:  # told to stop when it had just done so
             asked = pipe.recv()
         with suppress(Stopped):
             _answer(pipe, asked)
-        if not pipe.poll():
-            asked = pipe.recv()
 
 
 def _answer(pipe: Connection, asked: _Asked) -> None:
@@ -132,8 +156,8 @@ def _answer(pipe: Connection, asked: _Asked) -> None:
 
         for count in (0, DRAWS):
             pipe.send((number, "outage", hold.run(project, count=count, go_on=go_on)))
-            if project.trip is not None:
-                pipe.send((number, "trip", hold.run(project, "trip", count=count, go_on=go_on)))
+            trip = None if project.trip is None else hold.run(project, "trip", count=count, go_on=go_on)
+            pipe.send((number, "trip", trip))
     except Stopped:
         raise
     except ColdboxError as error:

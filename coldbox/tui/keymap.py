@@ -75,7 +75,8 @@ class Keymap:
         self.actions = tuple(
             action._replace(keys=tuple(changed[action.id])) if action.id in changed else action for action in ACTIONS
         )
-        self._by_key = {(action.where, key): action.id for action in reversed(self.actions) for key in action.keys}
+        own_last = sorted(self.actions, key=lambda action: action.id in changed)
+        self._by_key = {(action.where, key): action.id for action in own_last for key in action.keys}
 
     def action(self, where: str, key: str) -> str | None:
         """What a key does at a place: its own meaning there, else the one that holds everywhere."""

@@ -14,6 +14,7 @@ from coldbox.tui.keymap import ACTIONS, Keymap
 
 THEMES: Final = ("terminal", "dark", "light", "plain")
 MOST_KEYS: Final = 6
+WAYS_OUT: Final = {"quit": ("ctrl+c", "ctrl+q"), "close": ("escape", "ctrl+g")}
 
 
 class Settings(Record):
@@ -84,17 +85,9 @@ def _keys(given: Any, path: Path) -> tuple[dict[str, list[str]], list[str]]:
             problems.append(f'{path}: keys.{clean(word)} is a list of keys, such as ["w", "ctrl+s"].')
         else:
             found[word] = keys
-    left = _closable(found)
-    if left:
-        problems.append(f"{path}: {left}")
-        found.pop("close", None)
-        found.pop("quit", None)
+    for action, ways in WAYS_OUT.items():
+        keymap = Keymap(found)
+        if not any(keymap.action("everywhere", key) == action for key in ways):
+            problems.append(f"{path}: {' or '.join(ways)} must stay a key of {action}: every terminal sends it.")
+            found = {word: keys for word, keys in found.items() if word != action and not {*ways} & {*keys}}
     return found, problems
-
-
-def _closable(found: Mapping[str, list[str]]) -> str:
-    """There must stay a way out that every terminal sends at once."""
-    taken = {key for word, keys in found.items() if word not in ("quit", "close") for key in keys}
-    if {"ctrl+c", "ctrl+q"} <= taken or {"escape", "ctrl+g"} <= taken:
-        return "some key must still lead out: ctrl+c or ctrl+q to leave, escape or ctrl+g to go back."
-    return ""

@@ -2,13 +2,18 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, Final
 
+from coldbox.errors import UnknownName
 from coldbox.project import values
 from coldbox.project.fields import FIELDS, Field
+from coldbox.project.raw import Block, Entered
+from coldbox.project.shop import TABLES, date_of
 from coldbox.record import Record
 from coldbox.tables import load
-from coldbox.tui.document import block_at, shown
+from coldbox.tui.document import shown, typed
+from coldbox.tui.least import called
+from coldbox.tui.places import Keys, Refused, field_of, inside, keys_of_block, made_for, places
 from coldbox.tui.understood import of_field
 
 if TYPE_CHECKING:
@@ -34,28 +39,38 @@ class Line(Record):
 
 def lines(desk: Desk, thing: Thing) -> list[Line]:
     """Every field of a thing that holds a value, in the order of the file."""
-    block = block_at(desk.document, thing.path) if thing.path else desk.document
-    return [_line(desk, thing, field, block.get(field.key)) for field in FIELDS[thing.table] if not field.structural]
+    keys = keys_of_block(desk.document, thing.path)
+    block = None if keys is None else inside(desk.document, keys)
+    row = None if keys is None else _row(desk, keys)
+    return [
+        _line(desk, thing, field, (block or {}).get(field.key), row)
+        for field in FIELDS[thing.table]
+        if not field.structural
+    ]
 
 
-def _line(desk: Desk, thing: Thing, field: Field, value: Any) -> Line:
+def _line(desk: Desk, thing: Thing, field: Field, value: Any, row: Block | None) -> Line:
     path = f"{thing.path}.{field.key}" if thing.path else field.key
     origin = None if desk.project is None else desk.project.origins.get(path)
     inline = isinstance(value, dict)
     text = "" if value is None or inline else shown(value)
-    kind = "typed" if value is not None else "" if origin is None else origin.kind
-    if block_library(block_at(desk.document, thing.path) if thing.path else {}) and value is not None:
-        kind = "library"
-    if value is None and origin is not None:
-        text = origin.text
+    kind, reason = "typed", field.default_reason
+    if value is None:
+        if origin is not None and origin.kind in ("typed", "option"):  # of the last project that was whole
+            origin = None
+        kind = "" if origin is None else origin.kind
+        text = "" if origin is None else origin.text
+        reason = field.default_reason if origin is None else origin.reason
+    elif row is not None and _same(field, text, row.values.get(field.key)):
+        kind, reason = "library", "shop library"
     low, high = values.bounds(field, desk.system)
     return Line(
         key=field.key,
         path=path,
         label=field.label,
         shown="of its own, in the file" if inline else text,
-        origin="default" if kind == "option" else kind,
-        reason=origin.reason if origin is not None and value is None else field.default_reason,
+        origin=kind,
+        reason=reason,
         understood=of_field(field, text, desk.system) if text and not field.many else "",
         usual_range=f"{low} to {high}" if low and high else low or high,
         help=field.help,
@@ -64,9 +79,56 @@ def _line(desk: Desk, thing: Thing, field: Field, value: Any) -> Line:
     )
 
 
-def block_library(block: Any) -> bool:
-    """Whether the values of a thing were copied from the shop library."""
-    return bool(block.get("library"))
+# Copied from the shop library
+
+_FILES: Final = {table: file for file, table in TABLES.items()}
+
+
+def library_value(desk: Desk, path: str) -> Any:
+    """What the shop library has for a value that was copied from it; None for any other."""
+    try:
+        _, keys = made_for(desk.document, path)
+    except Refused:
+        return None
+    field, row = field_of(keys), _row(desk, keys[:-1])
+    entered = None if row is None or field is None else row.values.get(field.key)
+    if entered is None or field is None:
+        return None
+    return typed(field, entered.text, desk.system)
+
+
+def _row(desk: Desk, keys: Keys) -> Block | None:
+    """The row, or the part of one, that the values of a table were copied from; None where they were not."""
+    if not keys or keys[0] not in _FILES:
+        return None
+    own = 1 if keys[0] == "site" else 2
+    thing = inside(desk.document, keys[:own])
+    name = thing.get("library") if isinstance(thing, dict) else None
+    if not isinstance(name, str) or not date_of(name):
+        return None
+    try:
+        row: Block | None = desk.shelf.row(_FILES[keys[0]], name)
+    except UnknownName:
+        return None
+    for key in keys[own:]:
+        if isinstance(key, int):
+            continue
+        at = next((one for one in keys[keys.index(key) + 1 :][:1] if isinstance(one, int)), 0)
+        below = row.children.get(key, ()) if row is not None else ()
+        row = below[at] if at < len(below) else None
+    return row
+
+
+def _same(field: Field, text: str, entered: Entered | None) -> bool:
+    if entered is None:
+        return False
+    try:
+        return bool(values.from_text(field, text).value == entered.value)
+    except values.Wrong:
+        return False
+
+
+# To pick from
 
 
 def choices(desk: Desk, field: Field) -> tuple[str, ...]:
@@ -77,11 +139,13 @@ def choices(desk: Desk, field: Field) -> tuple[str, ...]:
         return ()
     found = list(field.choices)
     if field.refers in ("constructions", "neighbours", "doors", "lots", "packs"):
-        inside = desk.document.get(field.refers, {})
-        names = list(inside) if isinstance(inside, dict) else [one.get("name", "") for one in inside]
-        found += [str(name) for name in names if name]
-    if field.refers in ("foods", "materials", "weather", "packs"):
+        found += called(desk.document, field.refers)
+    elif field.refers == "trip.legs":
+        found += [one.name for one in places(desk.document) if one.table == "trip.legs" and one.name]
+    elif field.refers in ("foods", "materials", "weather"):
         found += sorted(load.names(field.refers))
     if field.refers == "constructions":
-        found += sorted(desk.library.names("constructions"))
+        found += sorted(desk.shelf.names("constructions"))
+    if field.refers == "shop library" and field.table in _FILES:
+        found += sorted(desk.shelf.names(_FILES[field.table]))
     return tuple(dict.fromkeys(found))

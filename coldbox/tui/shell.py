@@ -18,6 +18,7 @@ from coldbox.tui.settings import THEMES, Settings, load_settings
 
 if TYPE_CHECKING:  # what computes is imported when there is a project: the first page needs none of it
     from coldbox.tui.desk import Desk
+    from coldbox.tui.sheets.pick import Item
     from coldbox.tui.things import Thing
 
 BEGIN_NO_VALUE = ("help", "palette")  # their usual keys, ? and :, begin no value
@@ -32,6 +33,7 @@ ABOUT = {
     "doors": "an opening: leaf, curtain, traffic", "panels": "a stretch of a face that is built otherwise",
     "lots": "a product that arrives, is stored, or both", "packs": "ice, gel or dry ice",
     "people": "who works inside, and when", "lights": "lamps", "motors": "fans of machines, conveyors",
+    "constructions": "what a wall is made of", "neighbours": "a room behind a face",
     "trucks": "fork lifts, pallet trucks", "heaters": "floor, drain, pressure port", "ventilation": "on purpose",
 }  # fmt: skip
 
@@ -293,14 +295,26 @@ class Shell:
         else:
             self.over(EditSheet(self, found))
 
-    def add_at(self, face: str) -> None:
-        """Ask what to add, and open it. face: where the cursor is, "" for inside."""
+    def add_at(self, face: str, path: str = "") -> None:
+        """Ask what to add, and open it. face: where the cursor is, "" for inside; path: the thing it is on."""
         from coldbox.tui.document import ADDABLE
         from coldbox.tui.sheets.pick import Item, PickList
 
-        items = [Item(KINDS.get(table, table.removesuffix("s")), table, ABOUT.get(table, "")) for table in ADDABLE]
+        tables = (*ADDABLE, "constructions", "neighbours")
+        items = [Item(KINDS.get(table, table.removesuffix("s")), table, ABOUT.get(table, "")) for table in tables]
+        other = [one for one in ("box", "outage", "trip") if one != path]
+        items = [*self._inside(path), *items, *(item for one in other for item in self._inside(one))]
         heading = f"Add, on the {face}" if face else "Add"
         self.over(PickList(self, heading, items, lambda table: self._add(table, face)))
+
+    def _inside(self, path: str) -> list[Item]:
+        """What can be added in a thing."""
+        from coldbox.tui.sheets.pick import Item
+        from coldbox.tui.things import addable, thing
+
+        document = {} if self.desk is None else self.desk.document
+        found = thing(document, path) if path else None
+        return [] if found is None else [Item(f"{word} of {found.label}", at) for at, word in addable(document, found)]
 
     def _add(self, table: str, face: str) -> None:
         if self.desk is None or self._reads_only():
@@ -317,9 +331,10 @@ class Shell:
         desk = self.desk
         if desk is None or self._reads_only():
             return
-        from coldbox.tui.things import LISTS
+        from coldbox.tui.things import doubles, thing
 
-        if path.partition(".")[0] not in LISTS:
+        found = thing(desk.document, path)
+        if found is None or not doubles(found):
             self.say(f"The {self.described(path)} stays: only what stands on the box or in it can be doubled or go.")
         elif action == "duplicate":
             self._then_open(desk.duplicate(path))

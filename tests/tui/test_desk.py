@@ -10,9 +10,10 @@ import pytest
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
 
-from coldbox.errors import ColdboxError
+from coldbox.errors import BadProject, ColdboxError
 from coldbox.project import fresh, journal, store
 from coldbox.project.fields import FIELDS
+from coldbox.project.origins import declaration
 from coldbox.tui import document as documents
 from coldbox.tui import sheet, things
 from coldbox.tui.desk import Desk, Refusal, Understood
@@ -177,7 +178,9 @@ def test_a_face_is_written_when_it_says_something_and_goes_when_it_does_not(tmp_
     ],
 )
 def test_steps(path: str, text: str, steps: int, expected: str) -> None:
-    assert stepped(path, text, steps, "SI") == expected
+    field = declaration(path)
+    assert field is not None
+    assert stepped(field, text, steps, "SI", field.choices) == expected
 
 
 # Saving beside others
@@ -261,3 +264,27 @@ def test_nothing_typed_is_lost_or_raises(data: st.DataObject, tmp_path: Path) ->
     while desk.redo():
         pass
     assert desk.document == last
+
+
+def test_who_takes_the_file_over_is_told_to_the_first(tmp_path: Path) -> None:
+    desk = desk_on(tmp_path)
+    assert desk.lost() == "" and not desk.read_only
+    second = Desk.open(desk.path, hold=False)
+    second.take_over()
+    assert "taken over by" in desk.lost() and desk.read_only
+    with pytest.raises(ColdboxError, match="read only"):
+        desk.save()
+    desk.close()
+    assert second.lost() == "" and not second.read_only, "the first took only its own word away"
+    second.close()
+
+
+def test_a_file_that_broke_meanwhile_is_refused_and_the_work_stays(tmp_path: Path) -> None:
+    desk = desk_on(tmp_path)
+    desk.set("box.temperature", "-22 °C")
+    before = desk.document
+    Path(desk.path).write_text("[box\n", encoding="utf-8")
+    with pytest.raises(BadProject):
+        desk.reload()
+    assert desk.document is before and desk.dirty and desk.moved_on()
+    desk.close()

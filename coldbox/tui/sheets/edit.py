@@ -157,6 +157,11 @@ class EditSheet(Layer):
                 self._step(1 if action == "raise" else -1)
             case "default":
                 self._to_default()
+            case "add":
+                self.shell.add_at("", self.thing.path)
+            case "duplicate" | "remove":
+                self.shell.close(self)
+                self.shell.change_thing(action, self.thing.path)
             case _:
                 return self.rows.move(FIELD_KEYS.get(action, action), len(self.lines), self.room)
         return True
@@ -253,5 +258,5 @@ class EditSheet(Layer):
         desk = self.shell.desk
         assert desk is not None
         if self.line.origin == "typed":
-            desk.remove(self.line.path)
+            desk.back(self.line.path)
             self.shell.edited()
