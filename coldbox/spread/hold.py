@@ -232,6 +232,7 @@ def _spread(whole: Outage, drawn: Draws) -> HoldSpread:
 def _spawned(job: _Job, starts: Sequence[int], processes: int, go_on: GoOn | None) -> dict[int, Outage]:
     """All blocks, shared out among processes of their own; whatever ends this ends them at once."""
     import multiprocessing
+    import signal
     from multiprocessing.connection import wait
 
     context = multiprocessing.get_context("spawn")
@@ -243,7 +244,12 @@ def _spawned(job: _Job, starts: Sequence[int], processes: int, go_on: GoOn | Non
         for number in range(processes):
             ours, theirs = context.Pipe(duplex=False)
             worker = context.Process(target=_work, args=(theirs, job, starts[number::processes]), daemon=True)
-            worker.start()
+            # Ctrl-C is heard by all processes of a terminal; a new one must not hear it before it can ignore it.
+            signal.pthread_sigmask(signal.SIG_BLOCK, {signal.SIGINT})
+            try:
+                worker.start()
+            finally:
+                signal.pthread_sigmask(signal.SIG_UNBLOCK, {signal.SIGINT})
             theirs.close()
             workers.append(worker)
             listening.append(ours)
