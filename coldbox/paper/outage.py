@@ -129,6 +129,8 @@ def _reached(found: Outage, system: System) -> Iterator[str]:
     else:
         yield f"{cold} after {duration(found.reached_h)}{range_}: {found.reached_clock}"
     yield _last_words(found, system)
+    if found.kind == "pulldown" and not found.trace.lots:
+        yield "empty: no goods are told to come in warm"
     yield from _balance(found, system)
 
 
@@ -140,14 +142,13 @@ def _last_words(found: Outage, system: System) -> str:
         return f"not back within its limit at the end: {ends}"
     back = [one for one in found.limits if one.back_at_h is not None]
     last = max(back, key=lambda one: one.back_at_h or 0.0) if back else None
-    goods = "" if found.trace.lots else "; no goods are told to come in warm"
     if found.kind == "pulldown" and found.reached_h is None:
-        return f"the air is at {_degrees(float(found.trace.air_c[-1]), system)} in the end{goods}"
+        return f"the air is at {_degrees(float(found.trace.air_c[-1]), system)} in the end"
     lots_h = 0.0 if last is None or last.back_at_h is None else last.back_at_h
     if found.kind == "pulldown" and found.reached_h is not None and found.reached_h - lots_h > SAME_MINUTE_H:
         within = show(_middle(found.project.machine.band) / 2.0, "difference", system)
         at = _degrees(_middle(found.project.box.temperature), system)
-        return f"last: the air, within {within} of {at} from {found.reached_clock}{goods}"
+        return f"last: the air, within {within} of {at} from {found.reached_clock}"
     if last is not None:
         return f"last: {place_of(last)}, within {_degrees(last.limit_c, system)} from {last.back_clock}"
     return "no limit is broken on the way" if found.limits else "nothing in it has a limit"

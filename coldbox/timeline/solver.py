@@ -155,10 +155,12 @@ class _Run:
         rise = np.zeros_like(air_c)
         machine: FloatArray | None = None
         moving = np.ones(air_c.shape, dtype=bool)
+        respired = bodies.respired
         for _ in range(ROUNDS):
             with_goods = joined.copy()
             if bodies.shape[1]:
                 u, v = bodies.outward(state.lot_content, air_c, step_s)
+                respired = np.where(moving, bodies.respired, respired)  # a draw that is held keeps what it took
                 with_goods.rising(state.lot_mass * bodies.conductance, bodies.temperature[-1], u, v, air_c)
             if lumps.count:
                 u, v = lumps.outward(packed, air_c, step_s)
@@ -172,6 +174,7 @@ class _Run:
             moving &= ~held
             if not moving.any():
                 break
+        bodies.respired = respired
         return rise, machine
 
     def _ice(

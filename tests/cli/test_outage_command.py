@@ -132,6 +132,21 @@ def test_bad_usage(words: list[str], capsys: pytest.CaptureFixture[str]) -> None
     assert status == 2 and not out and err
 
 
+@pytest.mark.parametrize(("command", "file"), [("outage", FREEZER), ("trip", ROUND)])
+def test_defaults_are_listed(command: str, file: str, capsys: pytest.CaptureFixture[str]) -> None:
+    status, out, err = typed(capsys, command, file, "--defaults")
+    assert status == 0 and not err and "defaults used" in out.splitlines()[0]
+    assert "spreads.foam" in out
+
+
+def test_pulldown_and_recovery_answer_in_three_lines(capsys: pytest.CaptureFixture[str]) -> None:
+    for words in (["--pulldown"], ["--recovery", "--set", "outage.lasts=30 h"]):
+        for file in (FREEZER, str(PROJECTS / "long-quay-freezer.toml")):
+            _, out, _ = typed(capsys, "outage", file, *FEW, *words)
+            how_long, _, how_sure, *_ = out.splitlines()
+            assert " 8 in 10): " in how_long and how_sure.startswith("  within the asked 24 h: ")
+
+
 def test_a_trip_needs_legs(capsys: pytest.CaptureFixture[str]) -> None:
     status, out, err = typed(capsys, "trip", FREEZER)
     assert status == 2 and not out and "[trip]" in err

@@ -6,7 +6,7 @@ from pathlib import Path
 
 import numpy as np
 import pytest
-from support.boxes_in_a_kitchen import outage
+from support.boxes_in_a_kitchen import box, outage
 
 import coldbox
 from coldbox.errors import BadProject
@@ -131,3 +131,18 @@ def test_goods_still_warm_are_named_and_not_counted() -> None:
 def test_goods_in_since_the_day_before_say_so() -> None:
     found = hold.run(coldbox.open(PROJECTS / "block-house-freezing.toml", {"outage.horizon": "24 h"}), count=0)
     assert any(one.endswith("in since 15:00 the day before") for one in found.inside)
+
+
+def test_books_of_living_goods_close_in_every_draw(tmp_path: Path) -> None:
+    """Draws that need fewer rounds in a step than others book the heat they took, not that of a later round."""
+    file = tmp_path / "box.toml"
+    changes = {
+        "product": "strawberries",
+        "stored": "3000 kg",
+        "start": "5 °C",
+        "wall": "300 mm",
+        "limit": "8 °C",
+        "ice": "1 kg",
+    }
+    file.write_text(box(**changes, horizon="24 h"), encoding="utf-8")
+    assert hold.run(coldbox.open(file), count=6).heat_balance_error < 1e-9
