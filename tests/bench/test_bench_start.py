@@ -25,7 +25,7 @@ def _ratio(label: str, ours: Sequence[str], floor: Sequence[str]) -> float:
     print(
         f"\n{label}: {ratio:.2f} of least, {middle:.2f} in the middle ({1e3 * least[0]:.0f} / {1e3 * least[1]:.0f} ms)"
     )
-    return ratio
+    return min(ratio, middle)  # either alone is at the mercy of one slow start
 
 
 def test_a_load_against_the_imports_it_needs() -> None:
